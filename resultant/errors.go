@@ -18,16 +18,17 @@ func (e *DegenerateError) Error() string {
 	return fmt.Sprintf("%s = 0: %s", e.Channel, e.Reason)
 }
 
-// NotSeparatingError says that the hidden variable does not generate the
-// algebra: it takes equal values on different solutions (a symmetry of the
-// data), or does not see a multiple one. Another hidden leg may do.
+// NotSeparatingError says that the hidden variable t does not generate the algebra
+// of the constraints: it takes equal values on different solutions (a symmetry of
+// the data), or does not see a multiple one. Another hidden leg may do.
 type NotSeparatingError struct {
-	Leg          int // the hidden leg
-	Degree, Size int // of the minimal polynomial found, and (n-3)!
+	Leg    int // the hidden leg
+	Degree int // of the least recurrence of the sums of t^i/J_h, below Size
+	Size   int // (n-3)!
 }
 
 func (e *NotSeparatingError) Error() string {
-	return fmt.Sprintf("z%d does not separate the solutions: minimal polynomial of degree %d, not %d", e.Leg, e.Degree, e.Size)
+	return fmt.Sprintf("z%d does not separate the %d solutions: its residues have a recurrence of degree %d", e.Leg, e.Size, e.Degree)
 }
 
 // RangeError says that a computation was asked for more legs than it is meant for.

@@ -16,7 +16,6 @@ import (
 	"math/bits"
 
 	"eliminant/rational/prime"
-	"eliminant/rational/scattering"
 )
 
 // MaxLegs bounds the legs of a pencil: vectors of 9! elements.
@@ -129,10 +128,10 @@ func (p *Pencil) fill(s []prime.Element) error {
 	}
 	for _, v := range l.sets {
 		if v != 0 && c[0][v] == 0 {
-			return p.degenerate(v)
+			return degenerate(p.order, v)
 		}
 		if c[2][v] == 0 {
-			return p.degenerate(v, 2)
+			return degenerate(p.order, v, 2)
 		}
 	}
 
@@ -166,18 +165,6 @@ func (p *Pencil) fill(s []prime.Element) error {
 		p.c0 = f.Neg(p.c0)
 	}
 	return nil
-}
-
-// degenerate names the channel {1} and V and further roles (counted from 0).
-func (p *Pencil) degenerate(v uint32, further ...int) error {
-	legs := []int{p.order[0]}
-	for ; v != 0; v &= v - 1 {
-		legs = append(legs, p.order[bits.TrailingZeros32(v)+3])
-	}
-	for _, i := range further {
-		legs = append(legs, p.order[i])
-	}
-	return &DegenerateError{scattering.NewChannel(p.plan.n, legs...), "solutions are at infinity"}
 }
 
 // Field returns GF(p).
