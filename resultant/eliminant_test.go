@@ -6,9 +6,11 @@ import (
 	"testing"
 
 	"eliminant/rational/lift"
+	"eliminant/rational/prime"
 	"eliminant/rational/scattering"
 
 	"github.com/stretchr/testify/require"
+	"pgregory.net/rapid"
 )
 
 func eliminant(t *testing.T, d *scattering.Data, leg int) *Eliminant {
@@ -184,4 +186,48 @@ func BenchmarkEliminant(b *testing.B) {
 		_, err := ComputeEliminant(context.Background(), d, 3, Options{})
 		require.NoError(b, err)
 	}
+}
+
+// Over random data: the product of the roots is known from det T0 / det T1, and the
+// polynomial is the same from the matrix of M modulo a fresh prime.
+func TestEliminantsOfRandomData(t *testing.T) {
+	rapid.Check(t, func(r *rapid.T) {
+		n := rapid.IntRange(4, 6).Draw(r, "n")
+		d := generic(r, n)
+		leg := rapid.IntRange(3, n-1).Draw(r, "leg")
+		e, err := ComputeEliminant(context.Background(), d, leg, Options{})
+		require.NoError(r, err)
+		factorial := []int{1, 1, 2}
+		ratio := big.NewRat(1, 1)
+		for v := range 1 << (n - 4) {
+			two, other := []int{1, 2}, []int{1, leg}
+			size := 0
+			for a, j := 3, 0; a < n; a++ {
+				if a == leg {
+					continue
+				}
+				if v>>j&1 == 1 {
+					two, other = append(two, a), append(other, a)
+					size++
+				}
+				j++
+			}
+			x := d.Sum(scattering.NewChannel(n, two...))
+			x.Quo(x, d.Sum(scattering.NewChannel(n, other...)))
+			for range factorial[size] * factorial[n-4-size] {
+				ratio.Mul(ratio, x)
+			}
+		}
+		require.Equal(r, ratio.RatString(), e.Monic[0].RatString())
+
+		f := prime.NewSource("eliminant").Field()
+		p := newPencil(r, f, n, reduce(r, d, f), hiddenOrder(n, leg))
+		c, err := characteristicDense(context.Background(), p)
+		require.NoError(r, err)
+		for i, x := range e.Monic {
+			v, ok := f.FromRat(x)
+			require.True(r, ok)
+			require.Equal(r, c[i], v)
+		}
+	})
 }
