@@ -12,6 +12,9 @@ import (
 	"eliminant/rational/scattering"
 )
 
+// DefaultMaxLegs is the range of ComputeEliminant unless Options says otherwise.
+const DefaultMaxLegs = 9
+
 // Eliminant is the characteristic polynomial of one puncture over Q.
 type Eliminant struct {
 	Leg    int

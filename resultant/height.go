@@ -95,7 +95,7 @@ func logarithm(x *big.Int) float64 {
 // one entry, s_{1 3..n-1} in row (alpha, k+1), alpha_j = j-1, so Q is that entry times a
 // minor of T(t) without this row; at |t| = 1 it is at most H, as E is, because the entry
 // is at most the norm of the row left out. So Q has coefficients at most H, and
-// 1/J_h = Q(t)/(c0 E'(t)) up to sign, c0 the product of elimination.
+// 1/J_h = Q(t)/(c0 E'(t)) up to sign, c0 as in Representation.
 // L^{N-1} Q(t) is an algebraic integer, |Q(t)| <= N H (1 + H/|L|)^{N-1}.
 // R = Res(E, E') = U E + V E' for integer polynomials U, V of degree below N, R != 0, so
 // R/E'(t) = V(t) and L^{N-1} R/E'(t) is an algebraic integer. E has Euclidean norm at

@@ -7,9 +7,6 @@ import (
 	"eliminant/rational/scattering"
 )
 
-// DefaultMaxLegs is the range of ComputeEliminant unless Options says otherwise.
-const DefaultMaxLegs = 9
-
 // determinant holds what is known exactly of E(t) = det T(t) for integer data:
 // its coefficients are integers, bounded by bound in absolute value, the leading
 // one is +-lead and the constant one +-constant.
