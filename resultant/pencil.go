@@ -183,7 +183,8 @@ func (p *Pencil) Order() []int { return append([]int(nil), p.order...) }
 func (p *Pencil) Hidden() int { return p.order[2] }
 
 // Multiply sets z = M x, M = -T1^{-1} T0, for vectors of length N; z may be x.
-// Cost: k! (2^(k+2) - 2) products with one reduction for each of the N entries.
+// Cost: k! (2^(k+2) - 2) products without reductions, and two reductions for
+// each of the N entries.
 func (p *Pencil) Multiply(z, x []prime.Element) {
 	n := p.plan.size
 	if len(z) != n || len(x) != n {
