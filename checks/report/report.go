@@ -67,8 +67,56 @@ func writeJSON(w io.Writer, document any) error {
 	if err := e.Encode(document); err != nil {
 		return err
 	}
-	_, err := w.Write(b.Bytes())
+	_, err := w.Write(joinRows(b.Bytes()))
 	return err
+}
+
+// joinRows puts every array of an indented document that holds only numbers,
+// strings and words onto one line, so that a matrix has a line a row.
+func joinRows(indented []byte) []byte {
+	out := make([]byte, 0, len(indented))
+	open := -1 // where the innermost array begins in out, -1 after any bracket closed
+	quoted := false
+	for i := 0; i < len(indented); i++ {
+		c := indented[i]
+		out = append(out, c)
+		switch {
+		case quoted && c == '\\':
+			i++
+			out = append(out, indented[i])
+		case c == '"':
+			quoted = !quoted
+		case quoted:
+		case c == '[':
+			open = len(out) - 1
+		case c == '{' || c == '}':
+			open = -1
+		case c == ']':
+			if open >= 0 {
+				row := joined(out[open:])
+				out = append(out[:open], row...)
+			}
+			open = -1
+		}
+	}
+	return out
+}
+
+// joined removes line breaks and indentation from an array: strings of a JSON
+// document have no line breaks in them.
+func joined(array []byte) []byte {
+	lines := bytes.Split(array, []byte("\n"))
+	for i, l := range lines {
+		lines[i] = bytes.TrimLeft(l, " ")
+	}
+	var b bytes.Buffer
+	for i, l := range lines {
+		if i > 1 && i < len(lines)-1 {
+			b.WriteByte(' ')
+		}
+		b.Write(l)
+	}
+	return b.Bytes()
 }
 
 // exact writes a number in lowest terms, nil as JSON null.
