@@ -16,7 +16,7 @@ const splitMetric = "+-+-"
 //
 //	twistors   -> spinors by lambda-tilde_i = (<i,i+1> mu_{i-1} + <i+1,i-1> mu_i
 //	              + <i-1,i> mu_{i+1}) / (<i-1,i><i,i+1>)
-//	spinors    -> twistors by mu_i = sum over j < i of <i j> lambda-tilde_j
+//	spinors    -> twistors by mu_i = sum over j < i of <j i> lambda-tilde_j
 //	spinors    -> momenta in the metric "+-+-"
 //	momenta    -> spinors, in the metric "+-+-" and massless
 //	momenta    -> products, with polarisations; invariants
@@ -112,13 +112,13 @@ func (p *Point) noConversion(kind Kind) error {
 	return inputError(CodeConversion, p.Label, hint, "%s", why)
 }
 
-// twistorsOfSpinors sets mu_i = sum over j < i of <i j> lambda-tilde_j.
+// twistorsOfSpinors sets mu_i = sum over j < i of <j i> lambda-tilde_j.
 func (p *Point) twistorsOfSpinors() *Point {
 	q := &Point{Kind: KindTwistors, Twistors: make(Matrix, p.Legs())}
 	for i, l := range p.Angle {
 		var mu [2]Component
 		for j := range i {
-			b := determinant(l, p.Angle[j])
+			b := determinant(p.Angle[j], l)
 			for k := range mu {
 				mu[k] = mu[k].plus(b.times(p.Square[j][k]))
 			}

@@ -2,6 +2,7 @@ package kinematics
 
 import (
 	"bytes"
+	"cmp"
 	"errors"
 	"fmt"
 	"io"
@@ -41,8 +42,11 @@ func ReadPoints(r io.Reader, file string) ([]*Point, error) {
 	points := d.document()
 	if len(d.errs) > 0 {
 		slices.SortStableFunc(d.errs, func(x, y InputError) int {
-			return 1_000_000*(x.Line-y.Line) + x.Column - y.Column
+			return cmp.Or(cmp.Compare(x.Line, y.Line), cmp.Compare(x.Column, y.Column))
 		})
+		if d.more > 0 {
+			d.errs = append(d.errs, InputError{Code: CodeFurther, File: file, Message: fmt.Sprintf("%d further errors are not listed", d.more)})
+		}
 		return nil, d.errs
 	}
 	return points, nil
@@ -73,6 +77,7 @@ type decoder struct {
 	file   string
 	label  string
 	errs   InputErrors
+	more   int  // errors that are not listed
 	broken bool // something of the point at hand could not be read
 }
 
@@ -92,14 +97,12 @@ func (d *decoder) fail(offset int, code string, leg int, hint, format string, ar
 
 // note records an error.
 func (d *decoder) note(offset int, code string, leg int, hint, format string, args ...any) {
-	if len(d.errs) > maxErrors {
+	if len(d.errs) == maxErrors {
+		d.more++
 		return
 	}
 	e := InputError{Code: code, File: d.file, Point: d.label, Leg: leg, Message: fmt.Sprintf(format, args...), Hint: hint}
 	e.Line, e.Column = d.position(offset)
-	if len(d.errs) == maxErrors {
-		e.Code, e.Leg, e.Message, e.Hint = CodeFurther, 0, "further errors are not listed", ""
-	}
 	d.errs = append(d.errs, e)
 }
 
@@ -288,11 +291,11 @@ func (d *decoder) kind(p *Point, n *node) {
 		q.KK = d.required(main, "k.k")
 		q.EK, q.EE = d.optional(main, "e.k"), d.optional(main, "e.e")
 		q.FK, q.FE, q.FF = d.optional(main, "f.k"), d.optional(main, "f.e"), d.optional(main, "f.f")
-		d.absent(main, "e.k", q.EK)
-		d.absent(main, "e.e", q.EK)
-		d.absent(main, "f.k", q.FK)
-		d.absent(main, "f.e", q.EK)
-		d.absent(main, "f.f", q.FK)
+		d.nulls(main, "e.k", nil)
+		d.nulls(main, "e.e", q.EK)
+		d.nulls(main, "f.k", nil)
+		d.nulls(main, "f.e", q.EK)
+		d.nulls(main, "f.f", q.FK)
 	}
 }
 
@@ -322,7 +325,7 @@ func (d *decoder) optional(n *node, name string) Matrix {
 }
 
 // matrix reads an array of rows, of which some may be null if optional. Null
-// entries of optional rows are read as zero; see absent.
+// entries of optional rows are read as zero; see nulls.
 func (d *decoder) matrix(n *node, name string, optional bool) Matrix {
 	if n.kind != '[' {
 		d.fail(n.offset, CodeShape, 0, "one row for each leg", "%s must be an array of rows, found %s", name, n.describe())
@@ -352,21 +355,17 @@ func (d *decoder) matrix(n *node, name string, optional bool) Matrix {
 	return m
 }
 
-// absent checks the null entries of products: (a,b) may be null, and only null
-// or zero, if leg b has no vector, that is no row in columns.
-func (d *decoder) absent(products *node, name string, columns Matrix) {
+// nulls refuses null entries of products but in the columns of legs without
+// polarisation, the nil rows of columns.
+func (d *decoder) nulls(products *node, name string, columns Matrix) {
 	n := products.child(name)
 	if n == nil {
 		return
 	}
 	for a, row := range n.items {
 		for b, x := range row.items {
-			missing := name[2] != 'k' && b < len(columns) && columns[b] == nil
-			switch {
-			case x.kind == 'n' && !missing:
+			if x.kind == 'n' && (b >= len(columns) || columns[b] != nil) {
 				d.fail(x.offset, CodeShape, a+1, "", "%s: entry (%d,%d) is null", name, a+1, b+1)
-			case x.kind != 'n' && missing && !d.component(x, a+1).IsZero():
-				d.fail(x.offset, CodeShape, a+1, "write null or 0", "%s: entry (%d,%d) belongs to a leg without polarisation", name, a+1, b+1)
 			}
 		}
 	}

@@ -47,14 +47,31 @@ type checker struct {
 }
 
 func (c *checker) fail(code string, at place, leg int, hint, format string, args ...any) {
+	for i, x := range args {
+		switch x := x.(type) {
+		case Component:
+			args[i] = abridged(x.String())
+		case string:
+			args[i] = abridged(x)
+		}
+	}
 	c.list = append(c.list, problem{code, at, leg, fmt.Sprintf(format, args...), hint})
+}
+
+// abridged shortens what no one reads to the end.
+func abridged(s string) string {
+	const most = 200
+	if len(s) <= most {
+		return s
+	}
+	return fmt.Sprintf("%s...%s (%d characters)", s[:80], s[len(s)-20:], len(s))
 }
 
 // count checks the number of legs.
 func (c *checker) count(name string, m Matrix) bool {
 	n := len(m)
 	if n < MinLegs || n > MaxLegs {
-		c.fail(CodeLegs, place{name, -1, -1}, 0, "give one row for each leg", "%d legs; from %d to %d are possible", n, MinLegs, MaxLegs)
+		c.fail(CodeLegs, place{name, -1, -1}, 0, "give one row for each leg", "%s; from %d to %d are possible", plural(n, "leg"), MinLegs, MaxLegs)
 		return false
 	}
 	return true
@@ -144,7 +161,7 @@ func (c *checker) spinors() {
 func (c *checker) metricOK() bool {
 	d := len(c.Metric)
 	if d < MinDimension || d > MaxDimension {
-		c.fail(CodeMetric, place{"metric", -1, -1}, 0, "give one sign for each component", "a metric of %s; from %d to %d are possible", plural(d, "sign"), MinDimension, MaxDimension)
+		c.fail(CodeMetric, place{"metric", -1, -1}, 0, "give one sign for each component", "momenta in %s; from %d to %d are possible", plural(d, "dimension"), MinDimension, MaxDimension)
 		return false
 	}
 	if strings.Trim(c.Metric, "+-") != "" {
@@ -306,6 +323,9 @@ func (c *checker) products() {
 	}
 	c.polarised("e.k", q.EK, field{"e.e", &q.EE})
 	c.polarised("f.k", q.FK, field{"f.f", &q.FF}, field{"f.e", &q.FE})
+	c.emptyColumns("e.e", q.EE, q.EK)
+	c.emptyColumns("f.e", q.FE, q.EK)
+	c.emptyColumns("f.f", q.FF, q.FK)
 	c.symmetric("e.e", q.EE)
 	c.symmetric("f.f", q.FF)
 }
@@ -321,6 +341,18 @@ func (c *checker) polarised(name string, ek Matrix, others ...field) {
 		for _, o := range others {
 			if ((*o.matrix)[a] == nil) != (row == nil) {
 				c.fail(CodeShape, place{o.name, a, -1}, a+1, "a leg without polarisation has null in both", "leg %d has a row in only one of %s and %s", a+1, name, o.name)
+			}
+		}
+	}
+}
+
+// emptyColumns checks that the columns of legs without polarisation, the nil rows
+// of columns, hold nothing.
+func (c *checker) emptyColumns(name string, m, columns Matrix) {
+	for a, row := range m {
+		for b, x := range row {
+			if columns[b] == nil && !x.IsZero() {
+				c.fail(CodeShape, place{name, a, b}, a+1, "write null or 0", "%s: entry (%d,%d) is %v, but leg %d has no polarisation", name, a+1, b+1, x, b+1)
 			}
 		}
 	}
