@@ -200,28 +200,23 @@ func constraints(tb testing.TB, f *prime.Field, o groebner.Order, s [][]prime.El
 }
 
 // invariants returns the symmetric matrix with zero row sums whose entries s_ab
-// for 2 <= a < b < n, without the last one, are the given values, by a and then b.
+// for a < b < n are the given values, row by row, but for a = n-2, b = n-1, which
+// the row sums fix.
 func invariants(tb testing.TB, f *prime.Field, n int, values []prime.Element) [][]prime.Element {
 	s := make([][]prime.Element, n)
 	for a := range s {
 		s[a] = make([]prime.Element, n)
 	}
 	set := func(a, b int, v prime.Element) { s[a][b], s[b][a] = v, v }
-	// s_ab for legs 1..n-1 except the pair (n-2, n-1), which sum s = 0 then fixes
-	k := 0
+	require.Len(tb, values, (n-1)*(n-2)/2-1)
 	var total prime.Element
-	for a := range n - 1 {
+	for a := range n - 3 {
 		for b := a + 1; b < n-1; b++ {
-			if a == n-3 {
-				break
-			}
-			require.Less(tb, k, len(values))
-			set(a, b, values[k])
-			total = f.Add(total, values[k])
-			k++
+			set(a, b, values[0])
+			total = f.Add(total, values[0])
+			values = values[1:]
 		}
 	}
-	require.Len(tb, values, k)
 	set(n-3, n-2, f.Neg(total))
 	for a := range n - 1 {
 		var sum prime.Element
