@@ -117,6 +117,7 @@ func TestTwistorFamily(t *testing.T) {
 	var domain *kinematics.DomainError
 	require.ErrorAs(t, err, &domain)
 	require.Equal(t, "<1 2>", domain.What)
+	require.EqualError(t, err, "undefined at this point: <1 2> vanishes")
 }
 
 func TestComponentArithmetic(t *testing.T) {

@@ -128,6 +128,39 @@ func TestMarshalledPointIsAPointOfAFile(t *testing.T) {
 	require.True(t, points[0].Equal(splitPoints[1].point))
 }
 
+func TestSpinorComponents(t *testing.T) {
+	b, err := splitPoints[0].point.Brackets()
+	require.NoError(t, err)
+	require.Equal(t, 4, b.Legs())
+	l, m := b.Lambda(4), b.LambdaTilde(3)
+	require.Equal(t, []string{"1", "3", "0", "-7/2"}, []string{l[0].RatString(), l[1].RatString(), m[0].RatString(), m[1].RatString()})
+	l[0].SetInt64(5) // a copy
+	require.Equal(t, "3", b.Angle(1, 4).RatString())
+	require.Equal(t, "7", b.Square(1, 2).RatString())
+}
+
+func TestEqual(t *testing.T) {
+	p := splitPoints[1].point
+	label, kind, value := *p, *p, *p
+	label.Label = "other"
+	kind.Kind = kinematics.KindTwistors
+	value.Square = append(kinematics.Matrix{p.Square[1]}, p.Square[1:]...)
+	momenta, err := p.Convert(kinematics.KindMomenta)
+	require.NoError(t, err)
+	metric, massive := *momenta, *momenta
+	metric.Metric = "+---"
+	massive.MassesSquared = rows("0 0 0 0 1")[0]
+	require.True(t, p.Equal(p))
+	for _, q := range []*kinematics.Point{&label, &kind, &value, momenta} {
+		require.False(t, p.Equal(q))
+	}
+	require.False(t, momenta.Equal(&metric))
+	require.False(t, momenta.Equal(&massive))
+	massless := *momenta
+	massless.MassesSquared = rows("0 0 0 0 0")[0]
+	require.True(t, momenta.Equal(&massless))
+}
+
 // Integers are JSON numbers as long as binary64 holds them.
 func TestLargeIntegersAreStrings(t *testing.T) {
 	p := spinorPoint("large", "9007199254740991 0,0 1,9007199254740993 1,1 -1/9007199254740993", "1 0,0 1,0 0,0 0")

@@ -30,6 +30,15 @@ var broken = []struct {
 	{"open string", "{\"format", []string{"1:2 json 0: no closing quote"}},
 	{"control character", "{\"a\tb\": 1}", []string{"1:4 json 0: control character"}},
 	{"bad escape", `{"a\q": 1}`, []string{"1:4 json 0: not an escape"}},
+	{"bad hexadecimal", `{"\u12g4": 1}`, []string{"1:3 json 0: not an escape"}},
+	{"escape cut off", `{"\`, []string{"1:3 json 0: not an escape"}},
+	{"lonely minus", in(`{"twistors": [[-]]}`), []string{"2:17 json 0: expected a digit, found ']'"}},
+	{"no digits after the point", in(`{"twistors": [[1.]]}`), []string{"2:18 json 0: expected a digit"}},
+	{"no digits in the exponent", in(`{"twistors": [[1e+]]}`), []string{"2:19 json 0: expected a digit"}},
+	{"key without value", `{"a"}`, []string{"1:5 json 0: expected ':', found '}'"}},
+	{"no comma between keys", `{"a": 1 "b": 2}`, []string{"1:9 json 0: expected ',' or '}'"}},
+	{"no comma between values", `[1 2]`, []string{"1:4 json 0: expected ',' or ']'"}},
+	{"key is a number", `{1: 2}`, []string{"1:2 json 0: expected a key in quotes"}},
 	{"half a surrogate", `{"\ud800": 1}`, []string{"1:3 json 0: surrogate"}},
 	{"leading zeros", in(`{"twistors": [[01,2,3,4]]}`), []string{"2:16 json 0: leading zeros"}},
 	{"key twice", in(`{"twistors": 1, "twistors": 2}`), []string{`2:17 json 0: the key "twistors" is given twice`}},
@@ -239,6 +248,14 @@ func TestFilesThatCannotBeRead(t *testing.T) {
 
 	_, err = kinematics.ReadPoints(strings.NewReader(in(`{"twistors": [`+strings.Repeat("0,", 1<<20)+`0]}`)), "")
 	require.ErrorContains(t, err, "more than 1048576 values")
+}
+
+func TestEscapesInLabels(t *testing.T) {
+	text := in(`{"label": "\"\\\/\u00e9 \ud83d\ude00 \u03C6<", "twistors": [[1,0,0,1],[0,1,2,0],[1,1,1,1],[2,1,3,1]]}`)
+	points, err := kinematics.ReadPoints(strings.NewReader(text), "")
+	require.NoError(t, err)
+	require.Equal(t, "\"\\/é 😀 φ<", points[0].Label)
+	requireRoundTrip(t, points)
 }
 
 func TestReadingWhatIsAllowed(t *testing.T) {

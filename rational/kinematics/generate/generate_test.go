@@ -272,6 +272,7 @@ func TestExhaustedSearch(t *testing.T) {
 	var exhausted *generate.ExhaustedError
 	require.ErrorAs(t, err, &exhausted)
 	require.Equal(t, 5, exhausted.Legs)
+	require.ErrorContains(t, err, "no physical point of 5 legs without a vanishing invariant")
 	require.Equal(t, generate.Physical, exhausted.Kind)
 }
 
