@@ -8,6 +8,7 @@ import (
 
 	"eliminant/checks/claim"
 	"eliminant/checks/diag"
+	"eliminant/checks/formula"
 	"eliminant/checks/report"
 	"eliminant/rational/kinematics"
 
@@ -70,6 +71,9 @@ func (p *program) certify(ctx context.Context, in *intake, args []string) error 
 		}
 		file = loaded
 	}
+	if file != nil {
+		in.errs = append(in.errs, claimPowers(file)...)
+	}
 	out := in.text("out")
 	if in.given("out") && len(in.errs) == 0 {
 		var list diag.List
@@ -88,11 +92,6 @@ func (p *program) certify(ctx context.Context, in *intake, args []string) error 
 	g.stop()
 	stopped := err != nil && ctx.Err() != nil
 	if err != nil && !stopped {
-		if !p.json && settled != nil {
-			if err := p.show(&report.Verdicts{Report: settled}, 0); err != nil {
-				return err
-			}
-		}
 		return err
 	}
 	verdicts := &report.Verdicts{Report: settled}
@@ -122,6 +121,19 @@ func (p *program) certify(ctx context.Context, in *intake, args []string) error 
 		return exit(exitUndecided)
 	}
 	return nil
+}
+
+// claimPowers checks the powers in the formulas of a claims file.
+func claimPowers(file *claim.File) diag.List {
+	var errs diag.List
+	for _, c := range file.Claims {
+		for _, f := range []*formula.Formula{c.Sides[0], c.Sides[1], c.Of} {
+			if f != nil {
+				errs = append(errs, powers(f)...)
+			}
+		}
+	}
+	return errs
 }
 
 // keep writes the verdict document and the points file of every

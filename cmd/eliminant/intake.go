@@ -40,8 +40,6 @@ type intake struct {
 	p    *program
 	cmd  *cobra.Command
 	errs diag.List
-
-	stdinFor string // what the standard input was read for
 }
 
 func (p *program) intake(cmd *cobra.Command) *intake { return &intake{p: p, cmd: cmd} }
@@ -190,25 +188,19 @@ func (in *intake) many(args []string, hint string, expected int) {
 	in.fail("argument", hint, "%s takes %d arguments, found %d, the last is %q", in.cmd.Name(), expected, len(args), short(args[len(args)-1]))
 }
 
-// takeStdin returns the standard input, which can be read for one purpose.
-func (in *intake) takeStdin(what string) io.Reader {
-	if in.stdinFor != "" {
-		in.fail("argument", "put one of them in a file", "the standard input cannot be both %s and %s", in.stdinFor, what)
-		return strings.NewReader("")
-	}
-	in.stdinFor = what
-	return in.p.stdin
-}
-
 // formula reads a formula given as text, as @FILE or as - for the standard
 // input; nil if it is wrong.
 func (in *intake) formula(argument string, integrand bool) *formula.Formula {
+	if argument == "-" && in.text("points") == "-" {
+		in.fail("argument", "put one of them in a file", "the standard input cannot be both the formula and the points")
+		return nil
+	}
 	o := formula.ParseOptions{Integrand: integrand}
 	source := argument
 	switch {
 	case argument == "-":
 		o.File = "<stdin>"
-		b, ok := in.readAll(in.takeStdin("the formula"), o.File)
+		b, ok := in.readAll(in.p.stdin, o.File)
 		if !ok {
 			return nil
 		}
@@ -228,6 +220,9 @@ func (in *intake) formula(argument string, integrand bool) *formula.Formula {
 		source = b
 	}
 	f, errs := formula.Parse(source, o)
+	if f != nil {
+		errs = powers(f)
+	}
 	in.errs = append(in.errs, errs...)
 	if len(errs) > 0 {
 		return nil
@@ -263,7 +258,7 @@ func (in *intake) points(name string) []*kinematics.Point {
 	var points []*kinematics.Point
 	var err error
 	if name == "-" {
-		points, err = kinematics.ReadPoints(in.takeStdin("the points"), "<stdin>")
+		points, err = kinematics.ReadPoints(in.p.stdin, "<stdin>")
 	} else {
 		points, err = kinematics.ReadPointsFile(name)
 	}

@@ -9,7 +9,9 @@ import (
 	"runtime/debug"
 	"time"
 
+	"eliminant/checks/amplitude"
 	"eliminant/checks/diag"
+	"eliminant/checks/formula"
 	"eliminant/checks/report"
 	"eliminant/rational/kinematics"
 
@@ -79,6 +81,9 @@ func (p *program) fail(ctx context.Context, err error) int {
 	var points kinematics.InputErrors
 	var undecided *diag.Undecided
 	var internal *diag.Internal
+	if d, ok := refusal(err); ok {
+		err = errors.Join(err, diag.List{d})
+	}
 	switch {
 	case errors.As(err, &internal):
 	case errors.As(err, &list):
@@ -93,6 +98,30 @@ func (p *program) fail(ctx context.Context, err error) int {
 		internal = &diag.Internal{Message: err.Error()}
 	}
 	return p.faulty(report.InternalFault(internal), exitInternal)
+}
+
+// refusal turns the typed errors of lower packages that mean wrong input into a
+// diagnostic.
+func refusal(err error) (diag.Diagnostic, bool) {
+	var size *formula.SizeError
+	var leg *formula.LegError
+	var differ *formula.MassesDiffer
+	var mass *amplitude.MassError
+	var request *amplitude.RequestError
+	switch {
+	case errors.As(err, &size):
+		return diag.Diagnostic{Code: "too-large", Message: size.Error(), Hint: "write the formula with fewer terms"}, true
+	case errors.As(err, &leg):
+		return diag.Diagnostic{Code: "leg", File: leg.At.File, Line: leg.At.Line, Column: leg.At.Column, Message: leg.Error()}, true
+	case errors.As(err, &differ):
+		return diag.Diagnostic{Code: "masses", File: differ.At.File, Line: differ.At.Line, Column: differ.At.Column, Message: differ.Error(),
+			Hint: "msq3 is the mass squared of leg 3"}, true
+	case errors.As(err, &mass):
+		return diag.Diagnostic{Code: "masses", Message: mass.Error(), Hint: "give all legs the same masses_squared"}, true
+	case errors.As(err, &request):
+		return diag.Diagnostic{Code: "amplitude", Message: request.Error(), Hint: request.Hint}, true
+	}
+	return diag.Diagnostic{}, false
 }
 
 // faulty writes a fault: to stderr for a person, and with --json to stdout.

@@ -49,7 +49,7 @@ func (p *program) residues(ctx context.Context, in *intake, args []string) error
 		f = in.formula(argument, true)
 	}
 	if f == nil {
-		if in.given("points") {
+		if in.given("points") && d.file != "-" {
 			in.points(d.file)
 		}
 		return in.err()

@@ -108,7 +108,7 @@ func (p *program) value(ctx context.Context, in *intake, args []string) error {
 		f = in.formula(argument, false)
 	}
 	if f == nil {
-		if in.given("points") {
+		if in.given("points") && d.file != "-" {
 			in.points(d.file) // its errors belong in the list
 		}
 		return in.err()
@@ -167,6 +167,9 @@ func atLeastFour(f *formula.Formula, n int) int {
 
 // interrupted writes what was finished and says what was kept.
 func (p *program) interrupted(d report.Document, digits, finished, total int, what string) error {
+	if finished == 0 {
+		return context.Canceled
+	}
 	if err := p.show(d, digits); err != nil {
 		return err
 	}
