@@ -3,7 +3,9 @@ package main
 import (
 	"bytes"
 	"context"
+	"errors"
 	"fmt"
+	"os"
 	"path/filepath"
 
 	"eliminant/checks/claim"
@@ -88,13 +90,14 @@ func (p *program) certify(ctx context.Context, in *intake, args []string) error 
 		file.Seed = seed
 	}
 	g := p.progress()
-	settled, err := claim.Settle(ctx, file, claim.Options{Jobs: jobs, Progress: g.update})
+	settled, err := claim.Settle(ctx, file, claim.Options{Jobs: jobs,
+		Progress: func(done, total int, name string) { g.update(done, total, "claims") }})
 	g.stop()
 	stopped := err != nil && ctx.Err() != nil
 	if err != nil && !stopped {
 		return err
 	}
-	verdicts := &report.Verdicts{Report: settled}
+	verdicts := &report.Verdicts{Report: settled, Program: p.name}
 	if err := p.show(verdicts, 0); err != nil {
 		return err
 	}
@@ -137,18 +140,22 @@ func claimPowers(file *claim.File) diag.List {
 }
 
 // keep writes the verdict document and the points file of every
-// counterexample, numbered like the claims.
+// counterexample, numbered like the claims; those of an earlier run go.
 func keep(folder string, v *report.Verdicts) error {
 	var b bytes.Buffer
 	for i, r := range v.Claims {
+		path := filepath.Join(folder, fmt.Sprintf("counterexample-%d.json", i+1))
 		if r.Counterexample == nil {
+			if err := os.Remove(path); err != nil && !errors.Is(err, os.ErrNotExist) {
+				return diag.List{{Code: "unwritable", File: path, Message: "cannot be removed: " + plain(err)}}
+			}
 			continue
 		}
 		b.Reset()
 		if err := kinematics.WritePoints(&b, []*kinematics.Point{r.Counterexample.Point}); err != nil {
 			return err
 		}
-		if err := writeFile(filepath.Join(folder, fmt.Sprintf("counterexample-%d.json", i+1)), b.Bytes()); err != nil {
+		if err := writeFile(path, b.Bytes()); err != nil {
 			return err
 		}
 	}

@@ -162,7 +162,18 @@ func TestSignalInterrupts(t *testing.T) {
 	require.ErrorAs(t, c.Wait(), &failed)
 	require.Equal(t, exitInterrupted, failed.ExitCode(), errs.String())
 	require.NoError(t, validate(schemaFile("error"), out.Bytes()), out.String())
-	require.Contains(t, errs.String(), "interrupted, nothing was finished")
+	require.Contains(t, errs.String(), "interrupted: nothing was finished")
+}
+
+func TestHowToCallTheProgramAgain(t *testing.T) {
+	for path, want := range map[string]string{
+		"eliminant":                           "eliminant",
+		"./eliminant":                         "./eliminant",
+		"/home/a b/eliminant":                 "'/home/a b/eliminant'",
+		"/tmp/go-build123/b001/exe/eliminant": "go run ./cmd/eliminant",
+	} {
+		require.Equal(t, want, called(path))
+	}
 }
 
 // locked is a buffer written by one goroutine and read by another.

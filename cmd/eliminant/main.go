@@ -11,7 +11,9 @@ import (
 	"io"
 	"os"
 	"os/signal"
+	"strings"
 	"syscall"
+	"unicode"
 
 	"eliminant/checks/report"
 
@@ -28,17 +30,37 @@ func execute() int {
 	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt, syscall.SIGTERM)
 	defer stop()
 	context.AfterFunc(ctx, stop)
-	return run(ctx, os.Args[1:], os.Stdin, os.Stdout, os.Stderr)
+	p := newProgram(os.Stdin, os.Stdout, os.Stderr)
+	p.name = called(os.Args[0])
+	return p.run(ctx, os.Args[1:])
+}
+
+// called returns how to call the program again from a shell.
+func called(path string) string {
+	switch {
+	case strings.Contains(path, "go-build"): // built for this run only
+		return "go run ./cmd/eliminant"
+	case strings.ContainsFunc(path, func(r rune) bool {
+		return unicode.IsSpace(r) || strings.ContainsRune(`'"\$&|;<>()*?[]#~!{}`, r) || r == '`'
+	}):
+		return report.ShellQuote(path)
+	}
+	return path
 }
 
 // run runs the program and returns its exit code.
 func run(ctx context.Context, args []string, stdin io.Reader, stdout, stderr io.Writer) int {
-	p := &program{stdin: stdin, stdout: stdout, stderr: stderr, patience: patience}
+	return newProgram(stdin, stdout, stderr).run(ctx, args)
+}
+
+// newProgram prepares a run on the given streams.
+func newProgram(stdin io.Reader, stdout, stderr io.Writer) *program {
+	p := &program{name: "eliminant", stdin: stdin, stdout: stdout, stderr: stderr, patience: patience}
 	p.terminal = isTerminal(stderr)
 	if _, off := os.LookupEnv("NO_COLOR"); !off {
 		p.colourOut, p.colourErr = isTerminal(stdout), isTerminal(stderr)
 	}
-	return p.run(ctx, args)
+	return p
 }
 
 func isTerminal(w io.Writer) bool {

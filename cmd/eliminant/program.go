@@ -30,6 +30,7 @@ const (
 
 // program is one run: its streams and how it writes to them.
 type program struct {
+	name                 string // how a shell calls it
 	stdin                io.Reader
 	stdout, stderr       io.Writer
 	terminal             bool // progress bars may be drawn on stderr
@@ -93,11 +94,24 @@ func (p *program) fail(ctx context.Context, err error) int {
 	case errors.As(err, &undecided):
 		return p.faulty(&report.Fault{Diagnostics: diag.List{{Code: "undecided", Message: undecided.Reason}}}, exitUndecided)
 	case ctx.Err() != nil:
-		return p.faulty(&report.Fault{Diagnostics: diag.List{{Code: "interrupted", Message: "interrupted, nothing was finished"}}}, exitInterrupted)
+		return p.stopped()
 	default:
 		internal = &diag.Internal{Message: err.Error()}
 	}
 	return p.faulty(report.InternalFault(internal), exitInternal)
+}
+
+// stopped reports an interrupt before anything was finished.
+func (p *program) stopped() int {
+	const message = "interrupted: nothing was finished"
+	p.note(message)
+	if p.json {
+		f := report.Fault{Diagnostics: diag.List{{Code: "interrupted", Message: message}}}
+		if err := f.WriteJSON(p.stdout); err != nil {
+			p.note("%v", err)
+		}
+	}
+	return exitInterrupted
 }
 
 // refusal turns the typed errors of lower packages that mean wrong input into a

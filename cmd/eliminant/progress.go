@@ -66,7 +66,8 @@ func (g *progress) appear() {
 	defer g.mu.Unlock()
 	g.bars = mpb.New(mpb.WithOutput(g.out), mpb.WithWidth(64), mpb.WithAutoRefresh())
 	// a bar of total 0 never completes by itself, so its total may change
-	g.bar = g.bars.AddBar(0, mpb.PrependDecorators(decor.Any(func(decor.Statistics) string { return *g.label.Load() })))
+	g.bar = g.bars.AddBar(0, mpb.PrependDecorators(decor.Any(func(decor.Statistics) string { return *g.label.Load() })),
+		mpb.AppendDecorators(decor.Elapsed(decor.ET_STYLE_GO)))
 	g.draw()
 }
 
