@@ -331,7 +331,7 @@ func (t *test) exactAt(ctx context.Context, p *kinematics.Point) (*Result, error
 			x.Ratio = new(big.Rat).Quo(left, right).RatString()
 		}
 		return &Result{Name: t.claim.Name, Kind: t.claim.Kind, Verdict: Refuted, FalseAcceptance: "0",
-			Reason: "the two sides differ at an exact point", Routes: t.routeNames(), Counterexample: x}, nil
+			Reason: "the two sides differ at an exact point" + t.dimensions(id), Routes: t.routeNames(), Counterexample: x}, nil
 	}
 	return nil, nil
 }
@@ -373,11 +373,31 @@ func (t *test) atPoints(ctx context.Context) (*Result, error) {
 
 // located turns errors of evaluation into messages about the claim.
 func (t *test) located(err error) error {
+	place := diag.Diagnostic{File: t.claim.File, Line: t.claim.Line, Column: 1}
 	var zero *formula.DivisionByZero
 	if errors.As(err, &zero) {
-		return diag.List{{Code: "division-by-zero", File: t.claim.File, Line: t.claim.Line, Column: 1,
-			Message: fmt.Sprintf("claim %q divides by %s, which is identically zero", t.claim.Name, zero.Text),
-			Hint:    "correct the divisor"}}
+		place.Code, place.Hint = "division-by-zero", "correct the divisor"
+		place.Message = fmt.Sprintf("claim %q divides by %s, which is identically zero", t.claim.Name, zero.Text)
+		return diag.List{place}
 	}
-	return err
+	return inputError(err, place, fmt.Sprintf("claim %q: ", t.claim.Name))
+}
+
+// dimensions explains a refutation by mass dimensions that do not match; "" if
+// they do.
+func (t *test) dimensions(id identity) string {
+	d := &formula.DimensionDomain{}
+	left, err := formula.Evaluate(context.Background(), id.left, t.claim.Legs, d)
+	if err != nil {
+		return ""
+	}
+	right, err := formula.Evaluate(context.Background(), id.right, t.claim.Legs, d)
+	switch {
+	case err != nil:
+	case d.Mismatch != nil:
+		return ": " + d.Mismatch.Error()
+	case !left.Any && !right.Any && left.Value != right.Value:
+		return fmt.Sprintf(": the sides have mass dimensions %d and %d", left.Value, right.Value)
+	}
+	return ""
 }

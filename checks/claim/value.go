@@ -87,7 +87,7 @@ func ComputeValue(ctx context.Context, f *formula.Formula, p *kinematics.Point, 
 			rv.Proof, rv.Reason = "", stuck.Reason
 			undefined = err
 		case err != nil:
-			return nil, evaluationError(err)
+			return nil, inputError(err, diag.Diagnostic{}, "")
 		}
 		for _, a := range known {
 			if a.Proof != "bound" {
@@ -161,17 +161,32 @@ func chooseRoutes(e *engine, o ValueOptions, out *PointValue) ([]string, error) 
 	return o.Routes, nil
 }
 
-// evaluationError turns the errors of amplitudes into diagnostics.
-func evaluationError(err error) error {
+// inputError turns the errors of amplitudes and formulas that the input is to
+// blame for into a diagnostic at the given place; others are returned as they
+// are.
+func inputError(err error, place diag.Diagnostic, prefix string) error {
 	var mass *amplitude.MassError
 	var request *amplitude.RequestError
+	var differ *formula.MassesDiffer
+	var size *formula.SizeError
+	var leg *formula.LegError
 	switch {
 	case errors.As(err, &mass):
-		return diag.List{{Code: "masses", Message: mass.Error(), Hint: "give all legs the same masses_squared, or a shifted matrix of invariants with zero row sums and no masses"}}
+		place.Code, place.Message = "masses", mass.Error()
+		place.Hint = "give all legs the same masses_squared, or a shifted matrix of invariants with zero row sums and no masses"
+	case errors.As(err, &differ):
+		place.Code, place.Message = "masses", differ.Error()
 	case errors.As(err, &request):
-		return diag.List{{Code: "amplitude", Message: request.Error(), Hint: request.Hint}}
+		place.Code, place.Message, place.Hint = "amplitude", request.Error(), request.Hint
+	case errors.As(err, &size):
+		place.Code, place.Message = "too-large", size.Error()
+	case errors.As(err, &leg):
+		place.Code, place.Message = "leg", leg.Error()
+	default:
+		return err
 	}
-	return err
+	place.Message = prefix + place.Message
+	return diag.List{place}
 }
 
 // explain refines "not defined at this point": a divisor that vanishes at

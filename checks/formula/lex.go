@@ -28,7 +28,7 @@ type token struct {
 // lex splits a text into tokens; the last one is tokenEnd. Names are letters
 // followed by letters, digits and _; angle brackets of Unicode become < and >.
 func lex(text string) []token {
-	var out []token
+	out := make([]token, 0, len(text)/2+2)
 	line, column := 1, 1
 	spaced := false
 	for i := 0; i < len(text); {

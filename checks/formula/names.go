@@ -101,6 +101,8 @@ func (p *parser) unknown(t token, call bool) Node {
 		}
 	case p.o.Integrand && (t.text == "BS" || t.text == "phi3"):
 		p.fail(t, "integrand", "write PT(1,2,3,4) PT(1,2,3,4)/detPhi for BS(1,2,3,4|1,2,3,4)", "integrands have no amplitudes")
+	case !p.o.Integrand && call && (t.text == "PT" || t.text == "z" || t.text == "Pf"):
+		p.fail(t, "integrand", "the command residues takes integrands", "%s belongs to integrands", t.text)
 	case slices.Contains([]string{"s", "BS", "phi3", "cyclic", "perms", "PT", "z"}, t.text):
 		p.fail(t, "call", "for instance s(1,2), BS(1,2,3,4|1,3,2,4), cyclic{s12}", "%s must be followed directly by its bracket", t.text)
 	case Reserved(t.text):

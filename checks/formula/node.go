@@ -10,6 +10,7 @@ package formula
 import (
 	"math/big"
 	"slices"
+	"strings"
 )
 
 // Span is where a node stands: line and column of its first character, in the
@@ -25,6 +26,7 @@ type Node interface {
 	Span() Span
 	// String prints the node; parsing it gives the same tree.
 	String() string
+	write(b *strings.Builder)
 	legs(visit func(leg int))
 	relabel(to func(leg int) int) Node
 }
@@ -198,10 +200,8 @@ func (n *Power) relabel(to func(int) int) Node {
 	return &Power{n.span, n.Base.relabel(to), n.Exponent}
 }
 
-// The sum over all cyclic relabellings does not change when the relabelling is
-// one of them; for others the body is relabelled and the sum stays the sum over
-// conjugate relabellings, which relabel is not used for: Evaluate expands
-// cyclic sums before it relabels leaves.
+// relabel names a divisor that vanishes; Evaluate expands cyclic sums before it
+// relabels their leaves.
 func (n *Cyclic) relabel(to func(int) int) Node { return &Cyclic{n.span, n.Body.relabel(to)} }
 
 func (n *Perms) relabel(to func(int) int) Node {

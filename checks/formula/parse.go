@@ -47,7 +47,12 @@ func Parse(text string, o ParseOptions) (*Formula, diag.List) {
 	if len(p.errs) > 0 {
 		return nil, p.errs
 	}
-	return &Formula{Root: root, Text: strings.TrimSpace(text)}, nil
+	f := &Formula{Root: root, Text: strings.TrimSpace(text)}
+	legs, _ := f.Legs()
+	if errs := checkPowers(root, legs); len(errs) > 0 {
+		return nil, errs
+	}
+	return f, nil
 }
 
 // parser holds the state of one text, with those of the definitions it uses.

@@ -34,12 +34,29 @@ func level(n Node) int {
 	return levelPower + 1
 }
 
+// text prints a node. Nodes write into one builder: sums of many terms are deep
+// trees, and joining the strings of their parts would take quadratic time.
+func text(n Node) string {
+	var b strings.Builder
+	n.write(&b)
+	return b.String()
+}
+
 // group prints a node, in parentheses if it binds less than asked for.
 func group(n Node, least int) string {
+	var b strings.Builder
+	writeGroup(&b, n, least)
+	return b.String()
+}
+
+func writeGroup(b *strings.Builder, n Node, least int) {
 	if level(n) < least {
-		return "(" + n.String() + ")"
+		b.WriteByte('(')
+		n.write(b)
+		b.WriteByte(')')
+		return
 	}
-	return n.String()
+	n.write(b)
 }
 
 func commas(legs []int) string {
@@ -87,26 +104,56 @@ func (n *Amplitude) String() string {
 	return n.Theory + "(" + strings.Join(parts, "|") + ")"
 }
 
-func (n *Minus) String() string { return "-" + group(n.X, levelProduct) }
+func (n *Minus) write(b *strings.Builder) {
+	b.WriteByte('-')
+	writeGroup(b, n.X, levelProduct)
+}
 
-func (n *Binary) String() string {
+func (n *Binary) write(b *strings.Builder) {
 	left, right := levelSum, levelProduct
 	if n.Op == '*' || n.Op == '/' {
 		left, right = levelProduct, levelPower
 	}
-	return group(n.L, left) + string(n.Op) + group(n.R, right)
+	writeGroup(b, n.L, left)
+	b.WriteByte(n.Op)
+	writeGroup(b, n.R, right)
 }
 
-func (n *Power) String() string {
-	return group(n.Base, levelPower+1) + "^" + strconv.Itoa(n.Exponent)
+func (n *Power) write(b *strings.Builder) {
+	writeGroup(b, n.Base, levelPower+1)
+	b.WriteByte('^')
+	b.WriteString(strconv.Itoa(n.Exponent))
 }
 
-func (n *Cyclic) String() string { return "cyclic{" + n.Body.String() + "}" }
-func (n *Perms) String() string {
-	return "perms(" + commas(n.Legs) + "){" + n.Body.String() + "}"
+func (n *Cyclic) write(b *strings.Builder) {
+	b.WriteString("cyclic{")
+	n.Body.write(b)
+	b.WriteByte('}')
 }
+
+func (n *Perms) write(b *strings.Builder) {
+	b.WriteString("perms(" + commas(n.Legs) + "){")
+	n.Body.write(b)
+	b.WriteByte('}')
+}
+
+func (n *Minus) String() string              { return text(n) }
+func (n *Binary) String() string             { return text(n) }
+func (n *Power) String() string              { return text(n) }
+func (n *Cyclic) String() string             { return text(n) }
+func (n *Perms) String() string              { return text(n) }
 func (n *Puncture) String() string           { return "z" + strconv.Itoa(n.Leg) }
 func (n *Difference) String() string         { return "z(" + commas([]int{n.A, n.B}) + ")" }
 func (n *ParkeTaylor) String() string        { return "PT(" + commas(n.Ordering) + ")" }
 func (n *ReducedDeterminant) String() string { return "detPhi" }
 func (n *Jacobian) String() string           { return "J" }
+
+func (n *Number) write(b *strings.Builder)             { b.WriteString(n.String()) }
+func (n *Invariant) write(b *strings.Builder)          { b.WriteString(n.String()) }
+func (n *MassSquared) write(b *strings.Builder)        { b.WriteString(n.String()) }
+func (n *Amplitude) write(b *strings.Builder)          { b.WriteString(n.String()) }
+func (n *Puncture) write(b *strings.Builder)           { b.WriteString(n.String()) }
+func (n *Difference) write(b *strings.Builder)         { b.WriteString(n.String()) }
+func (n *ParkeTaylor) write(b *strings.Builder)        { b.WriteString(n.String()) }
+func (n *ReducedDeterminant) write(b *strings.Builder) { b.WriteString(n.String()) }
+func (n *Jacobian) write(b *strings.Builder)           { b.WriteString(n.String()) }

@@ -10,7 +10,6 @@ import (
 
 	"eliminant/checks/claim"
 	"eliminant/checks/diag"
-	"eliminant/checks/formula"
 	"eliminant/checks/report"
 	"eliminant/rational/kinematics"
 
@@ -73,9 +72,6 @@ func (p *program) certify(ctx context.Context, in *intake, args []string) error 
 		}
 		file = loaded
 	}
-	if file != nil {
-		in.errs = append(in.errs, claimPowers(file)...)
-	}
 	out := in.text("out")
 	if in.given("out") && len(in.errs) == 0 {
 		var list diag.List
@@ -124,19 +120,6 @@ func (p *program) certify(ctx context.Context, in *intake, args []string) error 
 		return exit(exitUndecided)
 	}
 	return nil
-}
-
-// claimPowers checks the powers in the formulas of a claims file.
-func claimPowers(file *claim.File) diag.List {
-	var errs diag.List
-	for _, c := range file.Claims {
-		for _, f := range []*formula.Formula{c.Sides[0], c.Sides[1], c.Of} {
-			if f != nil {
-				errs = append(errs, powers(f)...)
-			}
-		}
-	}
-	return errs
 }
 
 // keep writes the verdict document and the points file of every

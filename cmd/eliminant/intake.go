@@ -220,9 +220,6 @@ func (in *intake) formula(argument string, integrand bool) *formula.Formula {
 		source = b
 	}
 	f, errs := formula.Parse(source, o)
-	if f != nil {
-		errs = powers(f)
-	}
 	in.errs = append(in.errs, errs...)
 	if len(errs) > 0 {
 		return nil
