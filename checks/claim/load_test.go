@@ -101,7 +101,7 @@ func TestMistakesInFiles(t *testing.T) {
 		{claim + "space = \"5d\"\n", "space", 5},
 		{claim + "masses_squared = 0.5\n", "type", 5},
 		{claim + "masses_squared = \"1/0\"\n", "number", 5},
-		{claim + "points = \"nowhere.json\"\n", "unreadable", 5},
+		{claim + "points = \"nowhere.json\"\n", "file", 5},
 		{claim + "points = 7\n", "type", 5},
 		{"[[claim]]\nname = \"a\"\nequal = [\"s12\"]\n", "equal", 3},
 		{"[[claim]]\nname = \"a\"\nequal = [\"s12\", 3]\nlegs = 4\n", "type", 3},

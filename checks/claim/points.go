@@ -26,6 +26,11 @@ func PointDiagnostics(err error, file string, line, column int, from string) dia
 		if d.File == "" {
 			d.File = file
 		}
+		if d.Line == 0 && from != "" {
+			// the file as a whole: say who asked for it
+			d.Message = d.File + ": " + d.Message
+			d.File, d.Line, d.Column = from, line, column
+		}
 		if e.Point != "" {
 			d.Message = fmt.Sprintf("point %s: %s", e.Point, d.Message)
 		}
