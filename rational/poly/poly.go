@@ -1,6 +1,6 @@
 // Package poly is univariate polynomials over GF(p): arithmetic, fast
-// multiplication and reduction, greatest common divisors, interpolation, roots,
-// linear recurrences; and over Q as far as eliminants need it.
+// multiplication and reduction, greatest common divisors, interpolation, roots
+// and linear recurrences.
 //
 // Poly follows math/big: z.Mul(x, y) sets z to x y and returns it; z may be an
 // operand and the zero value is a usable receiver that takes the field of its
