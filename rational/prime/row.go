@@ -5,6 +5,9 @@ import "math/bits"
 // AddRow sets z = x + y entry by entry. The rows must have equal lengths; z may
 // be x or y.
 func (f *Field) AddRow(z, x, y []Element) {
+	if slowcheck {
+		f.checkCanonical(x, y)
+	}
 	p := f.p
 	x, y = x[:len(z)], y[:len(z)]
 	for i := range z {
@@ -18,6 +21,9 @@ func (f *Field) AddRow(z, x, y []Element) {
 
 // SubRow sets z = x - y entry by entry.
 func (f *Field) SubRow(z, x, y []Element) {
+	if slowcheck {
+		f.checkCanonical(x, y)
+	}
 	p := f.p
 	x, y = x[:len(z)], y[:len(z)]
 	for i := range z {
@@ -31,6 +37,9 @@ func (f *Field) SubRow(z, x, y []Element) {
 
 // MulRow sets z = x y entry by entry.
 func (f *Field) MulRow(z, x, y []Element) {
+	if slowcheck {
+		f.checkCanonical(x, y)
+	}
 	x, y = x[:len(z)], y[:len(z)]
 	for i := range z {
 		z[i] = f.Mul(x[i], y[i])
@@ -39,6 +48,9 @@ func (f *Field) MulRow(z, x, y []Element) {
 
 // ScaleRow sets z = c x.
 func (f *Field) ScaleRow(z []Element, c Element, x []Element) {
+	if slowcheck {
+		f.checkCanonical([]Element{c}, x)
+	}
 	x = x[:len(z)]
 	for i := range z {
 		z[i] = f.Mul(c, x[i])
@@ -47,6 +59,9 @@ func (f *Field) ScaleRow(z []Element, c Element, x []Element) {
 
 // AddScaledRow sets z = z + c x.
 func (f *Field) AddScaledRow(z []Element, c Element, x []Element) {
+	if slowcheck {
+		f.checkCanonical(z, []Element{c}, x)
+	}
 	x = x[:len(z)]
 	for i := range z {
 		hi, lo := bits.Mul64(uint64(c), uint64(x[i]))
@@ -66,6 +81,9 @@ func (f *Field) SubScaledRow(z []Element, c Element, x []Element) {
 
 // Dot returns the sum of x_i y_i with one reduction at the end.
 func (f *Field) Dot(x, y []Element) Element {
+	if slowcheck {
+		f.checkCanonical(x, y)
+	}
 	var hi, lo, c uint64
 	y = y[:len(x)]
 	p := f.p
