@@ -60,7 +60,7 @@ func ComputeResidue(ctx context.Context, f *formula.Formula, v *kinematics.Invar
 	if n > MaxLegs {
 		return nil, diag.List{{Code: "range", Message: fmt.Sprintf("residue sums reach %d legs, the point has %d", MaxLegs, n)}}
 	}
-	if errs := check(ctx, f, n); len(errs) > 0 {
+	if errs := check(ctx, f, v); len(errs) > 0 {
 		return nil, errs
 	}
 	if r, coefficient, ok := biAdjoint(f, n); ok && v.Massless() && o.Proof != lift.Agreement {
@@ -112,8 +112,9 @@ func matrix(v *kinematics.Invariants, ordering []int) (*scattering.Data, error) 
 	return d, nil
 }
 
-// check refuses integrands that make no sense for n legs.
-func check(ctx context.Context, f *formula.Formula, n int) diag.List {
+// check refuses integrands that make no sense for the legs of a point.
+func check(ctx context.Context, f *formula.Formula, v *kinematics.Invariants) diag.List {
+	n := v.Legs()
 	var errs diag.List
 	fail := func(at formula.Span, code, hint, format string, a ...any) {
 		errs = append(errs, diag.Diagnostic{Code: code, File: at.File, Line: at.Line, Column: at.Column, Message: fmt.Sprintf(format, a...), Hint: hint})
@@ -137,7 +138,14 @@ func check(ctx context.Context, f *formula.Formula, n int) diag.List {
 			}
 		}
 	})
-	if len(errs) > 0 || bare {
+	if len(errs) > 0 {
+		return errs
+	}
+	if zero := identicallyZero(ctx, f, n, v.Massless()); zero != nil {
+		fail(zero.At, "division-by-zero", "correct the divisor", "the integrand divides by %s, which is identically zero", zero.Text)
+		return errs
+	}
+	if bare {
 		return errs
 	}
 	d := &weightDomain{legs: n}
