@@ -16,7 +16,8 @@ type Diagnostic struct {
 	Message string // what is wrong and what was expected, one line
 	File    string // "" if the input was no file
 	Line    int    // 1-based, 0 if unknown
-	Column  int    // 1-based, 0 if unknown
+	Column  int    // 1-based, in characters, 0 if unknown
+	Length  int    // characters of the wrong piece, for Snippet; 0 counts as 1
 	Hint    string // what to try
 	Source  string // the line of text it stands in, for Snippet; may be empty
 }
@@ -47,7 +48,9 @@ func (d Diagnostic) String() string {
 // snippetWidth is how much of a source line a snippet shows.
 const snippetWidth = 100
 
-// Snippet returns the source line with a caret under the column, or "".
+// Snippet returns the source line with a mark under the wrong piece, a caret at
+// Column and tildes under the rest of Length, or "" if the line is unknown. A
+// long line is cut to the part around the mark.
 func (d Diagnostic) Snippet() string {
 	if d.Source == "" || d.Column < 1 {
 		return ""
@@ -56,7 +59,8 @@ func (d Diagnostic) Snippet() string {
 	at := min(d.Column-1, len(runes))
 	from := max(0, at-snippetWidth/2)
 	to := min(len(runes), from+snippetWidth)
-	return "  " + string(runes[from:to]) + "\n  " + strings.Repeat(" ", at-from) + "^"
+	mark := strings.Repeat(" ", at-from) + "^" + strings.Repeat("~", max(0, min(d.Length, to-at)-1))
+	return "  " + string(runes[from:to]) + "\n  " + mark
 }
 
 // Text returns the diagnostic for a person: place and message, the source line

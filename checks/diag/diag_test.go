@@ -38,6 +38,15 @@ func TestSnippetOfLongLines(t *testing.T) {
 	require.Empty(t, diag.Diagnostic{Source: "x"}.Snippet())
 }
 
+func TestSnippetMarksThePiece(t *testing.T) {
+	d := diag.Diagnostic{Source: "s12 + s11", Column: 7, Length: 3}
+	require.Equal(t, "  s12 + s11\n        ^~~", d.Snippet())
+	d.Length = 50
+	require.Equal(t, "  s12 + s11\n        ^~~", d.Snippet(), "the mark ends with the line")
+	d.Column = 40
+	require.Equal(t, "  s12 + s11\n           ^", d.Snippet(), "a place behind the line is its end")
+}
+
 func TestErrorsSpeak(t *testing.T) {
 	require.Equal(t, "s12 = 0", (&diag.Undecided{Reason: "s12 = 0"}).Error())
 	require.Contains(t, (&diag.Internal{Message: "routes disagree"}).Error(), "routes disagree")
