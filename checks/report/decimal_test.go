@@ -64,6 +64,12 @@ func TestDecimalIsNearest(t *testing.T) {
 		f := new(big.Float).SetPrec(2000).SetRat(r)
 		want, ok := new(big.Rat).SetString(f.Text('e', digits-1))
 		require.True(t, ok)
+		// an exact tie goes to the even neighbour here, while the binary
+		// expansion that math/big starts from lies on one side of it
+		away := new(big.Rat).Sub(want, r)
+		if want.Cmp(back) != 0 && away.Abs(away).Cmp(new(big.Rat).Abs(new(big.Rat).Sub(back, r))) == 0 {
+			return
+		}
 		require.Zero(t, want.Cmp(back), "%s, math/big %s", text, f.Text('e', digits-1))
 	})
 }
