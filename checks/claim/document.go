@@ -1,6 +1,7 @@
 package claim
 
 import (
+	"bytes"
 	"errors"
 	"fmt"
 	"strconv"
@@ -45,6 +46,7 @@ func readDocument(file string, text []byte) ([]section, diag.List) {
 	if len(text) > maxFile {
 		return nil, diag.List{{Code: "too-large", File: file, Message: fmt.Sprintf("the file has %d bytes, at most %d are read", len(text), maxFile)}}
 	}
+	text = bytes.TrimPrefix(text, []byte("\xef\xbb\xbf")) // editors put a byte order mark there
 	// the decoder knows all of TOML's rules, duplicate keys among them
 	var all map[string]any
 	if err := toml.Unmarshal(text, &all); err != nil {

@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"os"
 	"path/filepath"
+	"strings"
 	"testing"
 
 	"eliminant/checks/diag"
@@ -127,7 +128,9 @@ func TestMistakesInFiles(t *testing.T) {
 		require.Equal(t, c.line, list[0].Line, "%s\n%v", c.text, err)
 		require.Contains(t, list[0].File, "claims.toml")
 	}
-	_, err := Load(filepath.Join(t.TempDir(), "none.toml"))
+	_, err := load(t, "\xef\xbb\xbf"+strings.ReplaceAll(claim, "\n", "\r\n"))
+	require.NoError(t, err, "a byte order mark and line ends of two characters are no mistakes")
+	_, err = Load(filepath.Join(t.TempDir(), "none.toml"))
 	require.ErrorAs(t, err, new(diag.List))
 }
 

@@ -14,14 +14,14 @@ import (
 // Limits of the language. What exceeds them is refused with a message that
 // names the limit.
 const (
-	MaxText     = 16 << 20 // bytes of one formula
-	MaxDepth    = 400      // nested parentheses, braces and definitions
-	MaxExponent = 1000     // of ^, in absolute value
-	MaxDigits   = 4096     // of a number
-	MaxLegs     = 64       // largest leg
-	MaxPerms    = 8        // legs of one perms(){}
-	MaxTerms    = 1 << 20  // leaves after expanding cyclic{} and perms(){}
-	maxErrors   = 50       // reported per formula
+	MaxText     = 4 << 20 // bytes of one formula
+	MaxDepth    = 400     // nested parentheses, braces and definitions
+	MaxExponent = 1000    // of ^, in absolute value
+	MaxDigits   = 4096    // of a number
+	MaxLegs     = 64      // largest leg
+	MaxPerms    = 8       // legs of one perms(){}
+	MaxTerms    = 1 << 20 // leaves after expanding cyclic{} and perms(){}
+	maxErrors   = 50      // reported per formula
 )
 
 // ParseOptions says where a text stands and what names it may use; the zero
