@@ -54,9 +54,25 @@ func BenchmarkValue(b *testing.B) {
 	}
 }
 
-// BenchmarkWorkers compares one worker with two.
+// BenchmarkWorkers compares one worker with two where there are primes enough
+// to share: invariants of twelve digits, 16 primes or so.
 func BenchmarkWorkers(b *testing.B) {
+	src := prime.NewSource("workers")
+	poles := make([]int64, 9*6/2)
+	for i := range poles {
+		poles[i] = src.Between(1, 1e12)
+	}
+	p := planarPoint(b, 9, poles...)
+	r := Request{Theory: BiAdjoint, Orderings: [][]int{identityOrder(9), identityOrder(9)}}
 	for _, w := range []int{1, 2} {
-		b.Run(fmt.Sprintf("workers=%d", w), func(b *testing.B) { benchmarkValue(b, Elimination, 9, w) })
+		b.Run(fmt.Sprintf("workers=%d", w), func(b *testing.B) {
+			var primes int
+			for b.Loop() {
+				v, err := ComputeValue(context.Background(), r, p, Elimination, Options{Workers: w})
+				require.NoError(b, err)
+				primes = len(v.Record.Primes)
+			}
+			b.ReportMetric(float64(primes), "primes")
+		})
 	}
 }
