@@ -66,8 +66,8 @@ func (e *MassError) Error() string {
 type integers struct {
 	n      int
 	scale  *big.Int
-	s      [][]*big.Int // nil diagonal
-	mass   *big.Int     // nil if massless
+	s      [][]*big.Int
+	mass   *big.Int // nil if massless
 	scaled *kinematics.Invariants
 }
 
@@ -76,44 +76,24 @@ func newIntegers(r Request, v *kinematics.Invariants) (*integers, error) {
 	if err := checkLegs(r, n); err != nil {
 		return nil, err
 	}
-	p := &integers{n: n, scale: big.NewInt(1), s: make([][]*big.Int, n)}
-	widen := func(x *big.Rat) {
-		var g big.Int
-		g.GCD(nil, nil, p.scale, x.Denom())
-		p.scale.Mul(p.scale, g.Quo(x.Denom(), &g))
-	}
-	for a := 1; a <= n; a++ {
-		widen(v.MassSquared(a))
-		for b := a + 1; b <= n; b++ {
-			widen(v.S(a, b))
-		}
-	}
-	whole := func(x *big.Rat) *big.Int {
-		z := new(big.Int).Quo(p.scale, x.Denom())
-		return z.Mul(z, x.Num())
-	}
+	scale, flat, masses := v.Scaled()
+	p := &integers{n: n, scale: scale, s: make([][]*big.Int, n)}
 	s := make([][]*big.Rat, n)
-	m := make([]*big.Rat, n)
 	for a := range n {
-		p.s[a] = make([]*big.Int, n)
-		s[a] = make([]*big.Rat, n)
-		for b := range n {
-			if a == b {
-				s[a][b] = new(big.Rat)
-				continue
-			}
-			p.s[a][b] = whole(v.S(a+1, b+1))
-			s[a][b] = new(big.Rat).SetInt(p.s[a][b])
+		p.s[a] = flat[a*n : (a+1)*n]
+		for _, x := range p.s[a] {
+			s[a] = append(s[a], new(big.Rat).SetInt(x))
 		}
-		m[a] = new(big.Rat).SetInt(whole(v.MassSquared(a + 1)))
 	}
-	if v.Massless() {
-		m = nil
-	} else {
+	var m []*big.Rat
+	if !v.Massless() {
 		if _, ok := v.CommonMassSquared(); !ok {
 			return nil, &MassError{r}
 		}
-		p.mass = whole(v.MassSquared(1))
+		p.mass = masses[0]
+		for _, x := range masses {
+			m = append(m, new(big.Rat).SetInt(x))
+		}
 	}
 	var err error
 	p.scaled, err = kinematics.NewInvariants(s, m)

@@ -217,10 +217,8 @@ func (t *test) round(ctx context.Context, src *prime.Source, c coordinates, firs
 		return false, nil, t.located(last)
 	}
 	return false, nil, &diag.Internal{Message: fmt.Sprintf("claim %q: no route works at %d random points in a row", t.claim.Name, maxRedraws),
-		Detail: map[string]string{"last": last.Error(), "claim": text(t)}}
+		Detail: map[string]string{"last": last.Error(), "claim": t.text()}}
 }
-
-func text(t *test) string { return t.text() }
 
 // sidesAgree compares the sides of all identities at a point modulo a prime.
 func (t *test) sidesAgree(ctx context.Context, point *kinematics.Reduced, first bool) (bool, error) {
