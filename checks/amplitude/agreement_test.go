@@ -37,6 +37,7 @@ func Example() {
 	// recursion 1/3 bound
 	// diagrams 1/3 bound
 	// elimination 1/3 bound
+	// series 1/3 bound
 	// groebner 1/3 bound
 }
 

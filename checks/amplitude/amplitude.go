@@ -13,8 +13,9 @@
 //
 // Routes: recursion (off-shell currents), diagrams (enumeration from compatible
 // poles), elimination (trace in companion form through the resultant pencil),
-// groebner (the same through a Groebner basis). Recursion and diagrams share no
-// code, nor do elimination and groebner beyond the scattering data they are
+// series (continuation of all solutions from a solved start point), groebner
+// (trace in companion form through a Groebner basis). Recursion and diagrams
+// share no code, nor do the other three beyond the scattering data they are
 // handed.
 package amplitude
 
@@ -39,13 +40,14 @@ type Route string
 // The routes present.
 const (
 	Elimination Route = "elimination"
+	Series      Route = "series"
 	Groebner    Route = "groebner"
 	Recursion   Route = "recursion"
 	Diagrams    Route = "diagrams"
 )
 
 // Routes lists every route, the fastest first.
-func Routes() []Route { return []Route{Recursion, Diagrams, Elimination, Groebner} }
+func Routes() []Route { return []Route{Recursion, Diagrams, Elimination, Series, Groebner} }
 
 // Request names one amplitude: a theory and its orderings, legs 1-based.
 // Braces marks the sum over all orderings, phi3{1,...,n}.
@@ -162,6 +164,7 @@ var limits = map[Route]struct{ ordered, unordered limit }{
 	Recursion:   {limit{MaxLegs, MaxLegs}, limit{14, 14}},
 	Diagrams:    {limit{12, 12}, limit{9, 9}},
 	Elimination: {limit{10, 10}, limit{8, 6}},
+	Series:      {limit{10, 10}, limit{}},
 	Groebner:    {limit{7, 7}, limit{6, 5}},
 }
 
@@ -176,6 +179,10 @@ func Applicable(r Request, massive bool) (routes []Route, skipped []Skip) {
 		n := l.massless
 		if massive {
 			n = l.massive
+		}
+		if n == 0 {
+			skipped = append(skipped, Skip{route, fmt.Sprintf("%s sums over all orderings, which this route does not", r)})
+			continue
 		}
 		if r.Legs() > n {
 			skipped = append(skipped, Skip{route, fmt.Sprintf("%s has %d legs, beyond the range of this route (n <= %d)", r, r.Legs(), n)})

@@ -46,6 +46,7 @@ func BenchmarkValue(b *testing.B) {
 		{Recursion, []int{6, 8, 10, 12}},
 		{Diagrams, []int{6, 8, 9}},
 		{Groebner, []int{5, 6, 7}},
+		{Series, []int{6, 7, 8, 9, 10}},
 		{Elimination, []int{6, 7, 8, 9, 10}},
 	} {
 		for _, n := range c.legs {

@@ -27,6 +27,8 @@ func NewKernel(r Request, route Route) (Kernel, error) {
 		return diagramKernel(r), nil
 	case Elimination:
 		return eliminationKernel(r), nil
+	case Series:
+		return seriesKernel(r)
 	case Groebner:
 		return groebnerKernel(r), nil
 	}

@@ -215,6 +215,10 @@ func ComputeValue(ctx context.Context, r Request, v *kinematics.Invariants, rout
 		if errors.As(err, &separate) {
 			return nil, &DegenerateError{Route: route, Reason: "no variable tried takes different values on all solutions"}
 		}
+		var never *lift.KernelError
+		if errors.As(err, &never) {
+			return nil, &DegenerateError{Route: route, Reason: never.Last.Error()}
+		}
 		return nil, err
 	}
 	value := new(big.Rat).SetFrac(number[0], denominator)

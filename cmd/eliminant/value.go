@@ -32,8 +32,9 @@ drawn. Exit code 3 if no route gives a value (a pole, degenerate kinematics),
 4 if two routes disagree.
 
 Routes: recursion (off-shell currents), diagrams (enumeration), elimination
-(the scattering equations through a resultant), groebner (the same through a
-Groebner basis), formula (no amplitude in the formula).`,
+(the scattering equations through a resultant), series (continuation of the
+solutions from a solved point), groebner (elimination through a Groebner basis),
+formula (no amplitude in the formula).`,
 		Example: `  eliminant value 'BS(1,2,3,4|1,3,2,4)'
   eliminant value 'phi3(1,2,3,4,5) - BS(1,2,3,4,5|1,2,3,4,5)' --all-routes --seed 7
   eliminant value -s12 --legs 5 --digits 30
