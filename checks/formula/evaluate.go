@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"math/big"
+	"slices"
 )
 
 // Domain is what a formula can be evaluated in: numbers, residues, bounds,
@@ -52,7 +53,12 @@ func leaves(n Node, legs int) float64 {
 	case *Minus:
 		return leaves(n.X, legs)
 	case *Binary:
-		return leaves(n.L, legs) + leaves(n.R, legs)
+		s := spine(n)
+		count := leaves(s[len(s)-1].L, legs)
+		for _, b := range s {
+			count += leaves(b.R, legs)
+		}
+		return count
 	case *Power:
 		return leaves(n.Base, legs)
 	case *Cyclic:
@@ -73,15 +79,8 @@ type evaluator[T any] struct {
 	d    Domain[T]
 }
 
-// apply returns the leg that a relabelling sends a leg to; nil is the identity.
-func apply(to []int, leg int) int {
-	if to == nil || leg >= len(to) {
-		return leg
-	}
-	return to[leg]
-}
-
-func (e *evaluator[T]) node(n Node, to []int) (T, error) {
+// node evaluates a node with its legs relabelled; to is nil or has all legs.
+func (e *evaluator[T]) node(n Node, to relabelling) (T, error) {
 	switch n := n.(type) {
 	case *Number:
 		return e.d.Rational(n.Value)
@@ -96,41 +95,40 @@ func (e *evaluator[T]) node(n Node, to []int) (T, error) {
 	case *Power:
 		return e.power(n, to)
 	case *Cyclic:
-		return e.sum(e.legs, n.Body, func(k int) []int {
-			shift := make([]int, e.legs+1)
-			for l := 1; l <= e.legs; l++ {
-				shift[l] = apply(to, (l-1+k)%e.legs+1)
-			}
-			return shift
-		})
+		return e.sum(e.legs, n.Body, func(k int) relabelling { return to.after(rotation(e.legs, k)) })
 	case *Perms:
-		all := permutations(n.Legs)
-		return e.sum(len(all), n.Body, func(k int) []int {
-			m := make([]int, MaxLegs+1)
-			for l := range m {
-				m[l] = apply(to, l)
-			}
-			for i, l := range n.Legs {
-				m[l] = apply(to, all[k][i])
-			}
-			return m
-		})
+		return e.perms(n, to)
 	}
-	if err := e.ctx.Err(); err != nil {
+	if e.ctx.Err() != nil {
 		var none T
 		return none, context.Cause(e.ctx)
 	}
 	if to != nil {
-		n = n.relabel(func(l int) int { return apply(to, l) })
+		n = n.relabel(to)
 	}
 	return e.d.Leaf(n)
 }
 
+func (e *evaluator[T]) perms(n *Perms, to relabelling) (T, error) {
+	if err := checkLegs(n, e.legs); err != nil {
+		var none T
+		return none, err
+	}
+	all := permutations(n.Legs)
+	return e.sum(len(all), n.Body, func(k int) relabelling {
+		m := rotation(e.legs, 0)
+		for i, l := range n.Legs {
+			m[l] = all[k][i]
+		}
+		return to.after(m)
+	})
+}
+
 // sum adds the body under count relabellings.
-func (e *evaluator[T]) sum(count int, body Node, relabelling func(k int) []int) (T, error) {
+func (e *evaluator[T]) sum(count int, body Node, terms func(k int) relabelling) (T, error) {
 	var total T
 	for k := range count {
-		x, err := e.node(body, relabelling(k))
+		x, err := e.node(body, terms(k))
 		if err != nil {
 			return x, err
 		}
@@ -143,34 +141,39 @@ func (e *evaluator[T]) sum(count int, body Node, relabelling func(k int) []int) 
 	return total, nil
 }
 
-func (e *evaluator[T]) binary(n *Binary, to []int) (T, error) {
-	l, err := e.node(n.L, to)
+func (e *evaluator[T]) binary(n *Binary, to relabelling) (T, error) {
+	s := spine(n)
+	l, err := e.node(s[len(s)-1].L, to)
 	if err != nil {
 		return l, err
 	}
-	r, err := e.node(n.R, to)
-	if err != nil {
-		return r, err
+	for _, b := range slices.Backward(s) {
+		r, err := e.node(b.R, to)
+		if err != nil {
+			return r, err
+		}
+		switch b.Op {
+		case '+':
+			l = e.d.Add(l, r)
+		case '-':
+			l = e.d.Sub(l, r)
+		case '*':
+			l = e.d.Mul(l, r)
+		default:
+			if r, err = e.inverse(b.R, r, to); err != nil {
+				return r, err
+			}
+			l = e.d.Mul(l, r)
+		}
 	}
-	switch n.Op {
-	case '+':
-		return e.d.Add(l, r), nil
-	case '-':
-		return e.d.Sub(l, r), nil
-	case '*':
-		return e.d.Mul(l, r), nil
-	}
-	if r, err = e.inverse(n.R, r, to); err != nil {
-		return r, err
-	}
-	return e.d.Mul(l, r), nil
+	return l, nil
 }
 
-func (e *evaluator[T]) inverse(n Node, x T, to []int) (T, error) {
+func (e *evaluator[T]) inverse(n Node, x T, to relabelling) (T, error) {
 	inv, ok := e.d.Inverse(x)
 	if !ok {
 		if to != nil {
-			n = n.relabel(func(l int) int { return apply(to, l) })
+			n = n.relabel(to)
 		}
 		return inv, &DivisionByZero{At: n.Span(), Text: n.String()}
 	}
@@ -178,7 +181,7 @@ func (e *evaluator[T]) inverse(n Node, x T, to []int) (T, error) {
 }
 
 // power multiplies by squaring; a negative exponent inverts the base first.
-func (e *evaluator[T]) power(n *Power, to []int) (T, error) {
+func (e *evaluator[T]) power(n *Power, to relabelling) (T, error) {
 	x, err := e.node(n.Base, to)
 	if err != nil {
 		return x, err

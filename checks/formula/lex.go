@@ -6,7 +6,7 @@ import (
 	"unicode/utf8"
 )
 
-type kind int
+type kind uint8
 
 const (
 	tokenEnd kind = iota
@@ -19,62 +19,106 @@ const (
 // token is a piece of text with its place.
 type token struct {
 	kind         kind
-	text         string
-	offset       int  // in bytes
-	line, column int  // 1-based, column in characters
+	symbol       byte // of symbols; 0 for other tokens
 	spaced       bool // white space stands before it
+	start, end   int  // in bytes
+	line, column int  // 1-based, column in characters
 }
 
-// lex splits a text into tokens; the last one is tokenEnd. Names are letters
-// followed by letters, digits and _; angle brackets of Unicode become < and >.
-func lex(text string) []token {
-	out := make([]token, 0, len(text)/2+2)
-	line, column := 1, 1
-	spaced := false
-	for i := 0; i < len(text); {
-		r, size := utf8.DecodeRuneInString(text[i:])
-		if r == '\n' {
-			line, column, spaced = line+1, 1, true
-			i++
-			continue
-		}
-		if unicode.IsSpace(r) {
-			column++
-			spaced = true
-			i += size
-			continue
-		}
-		t := token{offset: i, line: line, column: column, spaced: spaced}
-		end := i + size
+// lexer splits a text into tokens one by one, so that a text costs no more
+// memory than its tree. Names are letters followed by letters, digits and _;
+// angle brackets of Unicode are read as < and >.
+type lexer struct {
+	text string
+	at   int // next byte
+	line int
+	// base makes columns: on the present line, column = offset - base + 1
+	base int
+}
+
+// class says what a byte begins.
+var class = func() (c [256]kind) {
+	for b := range c {
 		switch {
-		case isDigit(r):
-			t.kind = tokenNumber
-			for end < len(text) && isDigit(rune(text[end])) {
-				end++
-			}
-		case isLetter(r):
-			t.kind = tokenName
-			for end < len(text) && (isLetter(rune(text[end])) || isDigit(rune(text[end])) || text[end] == '_') {
-				end++
-			}
-		case strings.ContainsRune("+-*/^(){}[]<>,|.;", r):
-			t.kind = tokenSymbol
-		case strings.ContainsRune("⟨〈‹", r):
-			t.kind, t.text = tokenSymbol, "<"
-		case strings.ContainsRune("⟩〉›", r):
-			t.kind, t.text = tokenSymbol, ">"
+		case '0' <= b && b <= '9':
+			c[b] = tokenNumber
+		case 'a' <= b && b <= 'z' || 'A' <= b && b <= 'Z':
+			c[b] = tokenName
+		case strings.IndexByte("+-*/^(){}[]<>,|.;", byte(b)) >= 0:
+			c[b] = tokenSymbol
 		default:
-			t.kind = tokenBad
+			c[b] = tokenBad
 		}
-		if t.text == "" {
-			t.text = text[i:end]
-		}
-		out = append(out, t)
-		column += utf8.RuneCountInString(text[i:end])
-		i, spaced = end, false
 	}
-	return append(out, token{kind: tokenEnd, offset: len(text), line: line, column: column, spaced: spaced})
+	return c
+}()
+
+// brackets are the angle brackets of Unicode: mathematical, technical, those of
+// East Asian typography, and quotation marks that look alike.
+var brackets = map[rune]byte{
+	'\u27e8': '<', '\u2329': '<', '\u3008': '<', '\u2039': '<',
+	'\u27e9': '>', '\u232a': '>', '\u3009': '>', '\u203a': '>',
 }
 
-func isDigit(r rune) bool  { return '0' <= r && r <= '9' }
-func isLetter(r rune) bool { return 'a' <= r && r <= 'z' || 'A' <= r && r <= 'Z' }
+// next reads a token; at the end of the text tokenEnd, again and again.
+func (l *lexer) next() token {
+	spaced := l.space()
+	t := token{spaced: spaced, start: l.at, end: l.at, line: l.line, column: l.at - l.base + 1}
+	if l.at == len(l.text) {
+		return t
+	}
+	b := l.text[l.at]
+	t.kind = class[b]
+	end := l.at + 1
+	switch t.kind {
+	case tokenSymbol:
+		t.symbol = b
+	case tokenNumber:
+		for end < len(l.text) && class[l.text[end]] == tokenNumber {
+			end++
+		}
+	case tokenName:
+		for end < len(l.text) && (class[l.text[end]] <= tokenName && class[l.text[end]] != tokenEnd || l.text[end] == '_') {
+			end++
+		}
+	default:
+		if b >= utf8.RuneSelf {
+			r, size := utf8.DecodeRuneInString(l.text[l.at:])
+			end = l.at + size
+			l.base += size - 1
+			if s, ok := brackets[r]; ok {
+				t.kind, t.symbol = tokenSymbol, s
+			}
+		}
+	}
+	l.at, t.end = end, end
+	return t
+}
+
+// space passes white space.
+func (l *lexer) space() bool {
+	from := l.at
+	for l.at < len(l.text) {
+		b := l.text[l.at]
+		switch {
+		case b == '\n':
+			l.line++
+			l.base = l.at + 1
+			l.at++
+		case b == ' ' || '\t' <= b && b <= '\r':
+			l.at++
+		case b < utf8.RuneSelf:
+			return l.at > from
+		default:
+			r, size := utf8.DecodeRuneInString(l.text[l.at:])
+			if !unicode.IsSpace(r) {
+				return l.at > from
+			}
+			l.base += size - 1
+			l.at += size
+		}
+	}
+	return l.at > from
+}
+
+func isDigit(r rune) bool { return '0' <= r && r <= '9' }

@@ -2,6 +2,7 @@ package formula
 
 import (
 	"fmt"
+	"slices"
 
 	"eliminant/checks/diag"
 )
@@ -36,7 +37,12 @@ func powerSize(n Node, legs float64, refuse func(*Power, float64)) float64 {
 	case *Minus:
 		return powerSize(n.X, legs, refuse)
 	case *Binary:
-		return powerSize(n.L, legs, refuse) + powerSize(n.R, legs, refuse)
+		s := spine(n)
+		size := powerSize(s[len(s)-1].L, legs, refuse)
+		for _, b := range slices.Backward(s) {
+			size += powerSize(b.R, legs, refuse)
+		}
+		return size
 	case *Power:
 		s := powerSize(n.Base, legs, refuse) * float64(max(n.Exponent, -n.Exponent))
 		if s > MaxPower {
@@ -53,4 +59,30 @@ func powerSize(n Node, legs float64, refuse func(*Power, float64)) float64 {
 		return s
 	}
 	return 1
+}
+
+// checkAmplitudes refuses amplitudes of different numbers of legs, and legs that
+// the amplitudes do not have.
+func checkAmplitudes(root Node, legs int) diag.List {
+	var errs diag.List
+	fail := func(n Node, code, hint, format string, a ...any) {
+		at := n.Span()
+		if len(errs) < maxErrors {
+			errs = append(errs, diag.Diagnostic{Code: code, File: at.File, Line: at.Line, Column: at.Column, Message: fmt.Sprintf(format, a...), Hint: hint})
+		}
+	}
+	walk(root, func(n Node) {
+		if a, ok := n.(*Amplitude); ok {
+			if l := len(a.Orderings[0]); l != legs {
+				fail(n, "legs", "the amplitudes of a formula have the same legs", "an amplitude of %d legs beside one of %d", l, legs)
+			}
+			return
+		}
+		most := 0
+		n.legs(func(l int) { most = max(most, l) })
+		if most > legs {
+			fail(n, "leg", "", "leg %d out of range: the amplitudes of the formula have %d legs", most, legs)
+		}
+	})
+	return errs
 }

@@ -4,15 +4,15 @@ import (
 	"fmt"
 	"maps"
 	"slices"
-	"strconv"
 	"strings"
 )
 
-// laterNames are words of the language whose meaning is not present yet.
-var laterNames = []string{"YM", "GR", "NLSM", "EYM", "YMS", "BI", "sGal", "abs2", "gluons2", "tr5"}
-
 // minLegs is the least number of legs of an amplitude.
 const minLegs = 4
+
+// words are the names of the language as present, without those that end in
+// leg numbers.
+var words = []string{"s", "z", "msq", "cyclic", "perms", "BS", "phi3", "PT", "detPhi", "J"}
 
 // indexed splits a name like s123 or msq3 into its word and its digits; ok is
 // false if there is anything else.
@@ -29,13 +29,13 @@ func indexed(name, word string) (digits string, ok bool) {
 	return digits, true
 }
 
-// Reserved tells whether a name belongs to the language, so that no definition
-// may take it.
+// Reserved tells whether a name belongs to the language, present or to come, so
+// that no definition may take it.
 func Reserved(name string) bool {
-	if slices.Contains(laterNames, name) || slices.Contains([]string{"s", "z", "i", "msq", "cyclic", "perms", "BS", "phi3", "PT", "Pf", "detPhi", "J", "Nc"}, name) {
+	if slices.Contains(words, name) || slices.Contains(laterNames, name) {
 		return true
 	}
-	for _, w := range []string{"s", "z", "k", "e", "f", "msq"} {
+	for _, w := range []string{"s", "z", "msq", "k", "e", "f"} {
 		if _, ok := indexed(name, w); ok {
 			return true
 		}
@@ -43,135 +43,189 @@ func Reserved(name string) bool {
 	return false
 }
 
-// name reads what begins with a name. Only a name directly followed by ( or {
-// is a call.
+// name reads what begins with a name, which has been taken. Only a name directly
+// followed by ( or { is a call.
 func (p *parser) name(t token) Node {
-	call := p.touches("(") || p.touches("{")
+	name := p.of(t)
+	if len(p.o.Defines) > 0 {
+		if text, ok := p.o.Defines[name]; ok {
+			return p.definition(t, name, text)
+		}
+	}
+	if d, ok := indexed(name, "s"); ok {
+		return p.singleDigits(t, d)
+	}
+	switch name {
+	case "s":
+		if p.touches('(') {
+			return p.invariant(t)
+		}
+	case "msq":
+		return &MassSquared{p.from(t), 0}
+	case "cyclic":
+		if p.touches('{') {
+			return p.cyclic(t)
+		}
+	case "perms":
+		if p.touches('(') {
+			return p.perms(t)
+		}
+	case "BS", "phi3":
+		if (p.touches('(') || p.touches('{')) && !p.o.Integrand {
+			return p.amplitude(t, name)
+		}
+	default:
+		if d, ok := indexed(name, "msq"); ok {
+			leg := p.leg(t, d)
+			if leg == 0 {
+				return zero()
+			}
+			return &MassSquared{p.from(t), leg}
+		}
+	}
 	if p.o.Integrand {
-		if n, ok := p.integrandName(t, call); ok {
+		if n, ok := p.integrandName(t, name); ok {
 			return n
 		}
 	}
-	switch {
-	case t.text == "s" && p.touches("("):
-		return p.invariant(t)
-	case t.text == "msq":
-		return &MassSquared{p.from(t), 0}
-	case t.text == "cyclic" && p.touches("{"):
-		open := p.next()
-		body := p.sum()
-		p.close(open, "}")
-		return &Cyclic{p.from(t), body}
-	case t.text == "perms" && p.touches("("):
-		return p.perms(t)
-	case (t.text == "BS" || t.text == "phi3") && call && !p.o.Integrand:
-		return p.amplitude(t)
-	}
-	if d, ok := indexed(t.text, "s"); ok {
-		return p.singleDigits(t, d)
-	}
-	if d, ok := indexed(t.text, "msq"); ok {
-		leg, err := strconv.Atoi(d)
-		if err != nil || leg < 1 || leg > MaxLegs {
-			p.fail(t, "leg", fmt.Sprintf("legs are numbered from 1, at most %d", MaxLegs), "leg %s out of range", shorten(d))
-			return zero()
-		}
-		return &MassSquared{p.from(t), leg}
-	}
-	if text, ok := p.o.Defines[t.text]; ok {
-		return p.definition(t, text)
-	}
-	return p.unknown(t, call)
+	p.unknown(t, name)
+	return zero()
 }
 
-// unknown reports a name that has no meaning here.
-func (p *parser) unknown(t token, call bool) Node {
-	later := slices.Contains(laterNames, t.text) || t.text == "i"
-	for _, w := range []string{"k", "e", "f"} {
-		if _, ok := indexed(t.text, w); ok {
-			later = true
-		}
+// unknown reports a name that has no meaning here and passes its argument.
+func (p *parser) unknown(t token, name string) {
+	if p.later(t, name) {
+		return
 	}
+	_, puncture := indexed(name, "z")
+	word := slices.Contains(words, name)
 	switch {
-	case later:
-		p.fail(t, "not-available", "formulas of invariants, BS and phi3 are available", "%s is not available yet", t.text)
-		if p.is(".") {
-			p.next()
-			p.next()
-		}
-	case p.o.Integrand && (t.text == "BS" || t.text == "phi3"):
+	case p.o.Integrand && (name == "BS" || name == "phi3"):
 		p.fail(t, "integrand", "write PT(1,2,3,4) PT(1,2,3,4)/detPhi for BS(1,2,3,4|1,2,3,4)", "integrands have no amplitudes")
-	case !p.o.Integrand && call && (t.text == "PT" || t.text == "z" || t.text == "Pf"):
-		p.fail(t, "integrand", "the command residues takes integrands", "%s belongs to integrands", t.text)
-	case slices.Contains([]string{"s", "BS", "phi3", "cyclic", "perms", "PT", "z"}, t.text):
-		p.fail(t, "call", "for instance s(1,2), BS(1,2,3,4|1,3,2,4), cyclic{s12}", "%s must be followed directly by its bracket", t.text)
-	case Reserved(t.text):
-		p.fail(t, "integrand", "the command residues takes integrands", "%s belongs to integrands", t.text)
+	case !p.o.Integrand && (puncture || slices.Contains([]string{"z", "PT", "detPhi", "J"}, name)):
+		p.fail(t, "integrand", "the command residues takes integrands", "%s belongs to integrands", name)
+	case word:
+		p.fail(t, "call", "for instance "+examples[name], "%s must be followed directly by its bracket", name)
+	case p.plain || p.stopped:
+		p.fail(t, "unknown-name", "", "unknown name")
 	default:
-		hint := "names: s12, s(1,2,3), msq, cyclic{}, perms(){}, BS(), phi3()"
-		if p.o.Integrand {
-			hint = "names: z3, z(3,4), PT(), detPhi, J, s12"
-		}
-		if len(p.o.Defines) > 0 {
-			hint += "; defined: " + strings.Join(slices.Sorted(maps.Keys(p.o.Defines)), ", ")
-		}
-		p.fail(t, "unknown-name", hint, "unknown name %q", shorten(t.text))
+		p.fail(t, "unknown-name", p.suggest(name), "unknown name %q", shorten(name))
 	}
-	if call {
-		p.next()
+	// what was meant as the argument of the name
+	for p.touches('(') || p.touches('{') || word && name != "detPhi" && name != "J" && (p.is('(') || p.is('{') || p.touches('[')) {
+		p.advance()
 		p.skipGroup()
 	}
-	return zero()
+}
+
+var examples = map[string]string{
+	"s": "s(1,2)", "z": "z(3,4)", "cyclic": "cyclic{s12}", "perms": "perms(2,3){s12}", "PT": "PT(1,2,3,4)",
+	"BS": "BS(1,2,3,4|1,3,2,4)", "phi3": "phi3(1,2,3,4)",
+}
+
+// suggest says what names there are, the likeliest first.
+func (p *parser) suggest(name string) string {
+	defined := slices.Sorted(maps.Keys(p.o.Defines))
+	hint := ""
+	for _, w := range slices.Concat(defined, words, laterNames) {
+		if len(w) > 1 && (strings.EqualFold(w, name) || near(w, name)) {
+			hint = "did you mean " + w + "? "
+			break
+		}
+	}
+	if p.o.Integrand {
+		hint += "names: z3, z(3,4), PT(), detPhi, J, s12"
+	} else {
+		hint += "names: s12, s(1,2,3), msq, cyclic{}, perms(){}, BS(), phi3()"
+	}
+	if len(defined) > 10 {
+		defined = append(defined[:10:10], "...")
+	}
+	if len(defined) > 0 {
+		hint += "; defined: " + strings.Join(defined, ", ")
+	}
+	return hint
+}
+
+// near tells whether names differ by one letter: changed, missing or added.
+func near(a, b string) bool {
+	if len(a) > len(b) {
+		a, b = b, a
+	}
+	if len(b) < 3 || len(b)-len(a) > 1 {
+		return false
+	}
+	i := 0
+	for i < len(a) && a[i] == b[i] {
+		i++
+	}
+	if len(a) == len(b) {
+		return i < len(a) && a[i+1:] == b[i+1:]
+	}
+	return a[i:] == b[i+1:]
 }
 
 // invariant reads s(a,b,...).
 func (p *parser) invariant(t token) Node {
-	open := p.next()
-	legs, tokens, end := p.list(open, ")")
-	return p.newInvariant(t, legs, tokens, end != "")
+	legs, places, end := p.list(p.advance(), ')')
+	if end == 0 {
+		return zero()
+	}
+	return p.newInvariant(t, legs, places)
 }
 
-func (p *parser) newInvariant(t token, legs []int, tokens []token, complete bool) Node {
-	if !complete || !p.distinct(legs, tokens, "the invariant") {
+func (p *parser) newInvariant(t token, legs []int, places []token) Node {
+	if !p.distinct(legs, places, "the invariant") {
 		return zero()
 	}
 	if len(legs) < 2 {
 		p.fail(t, "leg", "for instance s(1,2)", "an invariant needs at least two legs")
 		return zero()
 	}
-	return &Invariant{p.from(t), legs}
+	return &Invariant{p.from(t), slices.Clone(legs)}
 }
 
-// singleDigits reads s12, s123, z34: legs of one digit each.
+// singleDigits reads s12, s123: legs of one digit each.
 func (p *parser) singleDigits(t token, digits string) Node {
-	legs := make([]int, len(digits))
-	tokens := make([]token, len(digits))
-	for i, c := range digits {
-		legs[i], tokens[i] = int(c-'0'), t
-		if legs[i] == 0 {
-			p.fail(t, "leg", "legs of two digits: s(1,10)", "leg 0 in %s", shorten(t.text))
+	p.legs, p.places = p.legs[:0], p.places[:0]
+	for _, c := range digits {
+		if c == '0' {
+			p.fail(t, "leg", "legs of two digits: s(1,10)", "leg 0 in %s", shorten(p.of(t)))
 			return zero()
 		}
+		p.legs, p.places = append(p.legs, int(c-'0')), append(p.places, t)
 	}
-	return p.newInvariant(t, legs, tokens, true)
+	return p.newInvariant(t, p.legs, p.places)
+}
+
+// body reads {sum}.
+func (p *parser) body() Node {
+	open := p.advance()
+	n := p.sum()
+	p.close(open, '}')
+	return n
+}
+
+// cyclic reads cyclic{body}.
+func (p *parser) cyclic(t token) Node {
+	body := p.body()
+	return &Cyclic{p.from(t), body}
 }
 
 // perms reads perms(a,b,...){body}.
 func (p *parser) perms(t token) Node {
-	open := p.next()
-	legs, tokens, end := p.list(open, ")")
-	ok := end != "" && p.distinct(legs, tokens, "perms")
+	list, places, end := p.list(p.advance(), ')')
+	legs := slices.Clone(list)
+	ok := end != 0 && p.distinct(legs, places, "perms")
 	if len(legs) > MaxPerms {
 		p.fail(t, "too-large", "", "perms over %d legs, at most %d are expanded", len(legs), MaxPerms)
 		ok = false
 	}
-	if !p.is("{") {
-		p.fail(p.peek(), "syntax", "for instance perms(2,3){s12}", "perms(...) needs its body in braces")
+	if !p.is('{') {
+		p.fail(p.tok, "syntax", "for instance perms(2,3){s12}", "perms(...) needs its body in braces, found %s", p.describe(p.tok))
 		return zero()
 	}
-	brace := p.next()
-	body := p.sum()
-	p.close(brace, "}")
+	body := p.body()
 	if !ok {
 		return zero()
 	}
@@ -179,25 +233,24 @@ func (p *parser) perms(t token) Node {
 }
 
 // amplitude reads BS(..|..), phi3(..) and phi3{..}.
-func (p *parser) amplitude(t token) Node {
-	open := p.next()
-	closing := ")"
-	if open.text == "{" {
-		closing = "}"
+func (p *parser) amplitude(t token, name string) Node {
+	open := p.advance()
+	closing := byte(')')
+	if open.symbol == '{' {
+		closing = '}'
 	}
 	var orderings [][]Leg
-	var first []int
 	ok := true
-	for {
-		legs, tokens, end := p.list(open, "|", closing)
-		if end == "" {
+	for end := byte('|'); end == '|'; {
+		var legs []int
+		var places []token
+		legs, places, end = p.list(open, '|', closing)
+		if end == 0 {
 			return zero()
 		}
-		ok = p.ordering(t, legs, tokens) && ok
-		if first == nil {
-			first = legs
-		} else if ok && len(legs) != len(first) {
-			p.fail(t, "orderings", "both orderings name the same legs", "orderings of %d and %d legs", len(first), len(legs))
+		ok = p.ordering(t, legs, places) && ok
+		if len(orderings) > 0 && ok && len(legs) != len(orderings[0]) {
+			p.fail(t, "orderings", "both orderings name the same legs", "orderings of %d and %d legs", len(orderings[0]), len(legs))
 			ok = false
 		}
 		o := make([]Leg, len(legs))
@@ -205,26 +258,23 @@ func (p *parser) amplitude(t token) Node {
 			o[i].Label = l
 		}
 		orderings = append(orderings, o)
-		if end == closing {
-			break
-		}
 	}
 	switch {
-	case t.text == "BS" && closing == "}":
-		p.fail(t, "amplitude", "write BS(1,2,3,4|1,3,2,4)", "BS takes parentheses")
-	case t.text == "BS" && len(orderings) != 2:
-		p.fail(t, "amplitude", "write BS(1,2,3,4|1,3,2,4)", "BS takes two orderings, found %d", len(orderings))
-	case t.text == "phi3" && len(orderings) != 1:
-		p.fail(t, "amplitude", "write phi3(1,2,3,4)", "phi3 takes one ordering, found %d", len(orderings))
+	case name == "BS" && closing == '}':
+		p.failAt(t, p.last, "amplitude", "write BS(1,2,3,4|1,3,2,4)", "BS takes parentheses")
+	case name == "BS" && len(orderings) != 2:
+		p.failAt(t, p.last, "amplitude", "write BS(1,2,3,4|1,3,2,4)", "BS takes two orderings, found %d", len(orderings))
+	case name == "phi3" && len(orderings) != 1:
+		p.failAt(t, p.last, "amplitude", "write phi3(1,2,3,4)", "phi3 takes one ordering, found %d", len(orderings))
 	case ok:
-		return &Amplitude{p.from(t), t.text, orderings, closing == "}"}
+		return &Amplitude{p.from(t), name, orderings, closing == '}'}
 	}
 	return zero()
 }
 
 // ordering checks that an ordering names the legs 1..n once each.
-func (p *parser) ordering(t token, legs []int, tokens []token) bool {
-	if !p.distinct(legs, tokens, "the ordering") {
+func (p *parser) ordering(t token, legs []int, places []token) bool {
+	if !p.distinct(legs, places, "the ordering") {
 		return false
 	}
 	if len(legs) < minLegs {
@@ -233,86 +283,44 @@ func (p *parser) ordering(t token, legs []int, tokens []token) bool {
 	}
 	for i, l := range legs {
 		if l > len(legs) {
-			p.fail(tokens[i], "leg", fmt.Sprintf("an amplitude names its legs 1..%d each once", len(legs)), "leg %d out of range in an ordering of %d legs", l, len(legs))
+			p.fail(places[i], "leg", fmt.Sprintf("an amplitude names its legs 1..%d each once", len(legs)), "leg %d out of range in an ordering of %d legs", l, len(legs))
 			return false
 		}
 	}
 	return true
 }
 
-// definition puts the tree of a defined name in place.
-func (p *parser) definition(t token, text string) Node {
-	if slices.Contains(p.defining, t.text) {
-		p.fail(t, "define", "definitions must not lead back to themselves", "the definition of %s uses itself: %s", t.text, strings.Join(append(slices.Clone(p.defining), t.text), " -> "))
-		p.stopped = true
-		return zero()
-	}
-	if !p.deeper(t) {
-		return zero()
-	}
-	inner := &parser{o: ParseOptions{File: p.o.File, Line: 1, Column: 1, Defines: p.o.Defines, Integrand: p.o.Integrand},
-		lines: strings.Split(text, "\n"), depth: p.depth, defining: append(slices.Clone(p.defining), t.text), expansion: p.expansion}
-	n := inner.whole(text)
-	p.depth--
-	if len(inner.errs) > 0 {
-		e := inner.errs[0]
-		if e.Code == "define" {
-			p.fail(t, e.Code, e.Hint, "%s", e.Message)
-			p.stopped = true
-			return zero()
-		}
-		p.fail(t, e.Code, e.Hint, "in the definition of %s, column %d: %s", t.text, e.Column, e.Message)
-		return zero()
-	}
-	p.expansion = inner.expansion + 1
-	walk(n, func(Node) { p.expansion++ })
-	if p.expansion > MaxTerms {
-		p.fail(t, "too-large", "", "definitions expand to more than %d terms", MaxTerms)
-		p.stopped = true
-		return zero()
-	}
-	return n
-}
-
 // integrandName reads the names that only integrands have.
-func (p *parser) integrandName(t token, call bool) (Node, bool) {
+func (p *parser) integrandName(t token, name string) (Node, bool) {
 	switch {
-	case t.text == "z" && p.touches("("):
-		open := p.next()
-		legs, tokens, end := p.list(open, ")")
-		if end == "" || !p.distinct(legs, tokens, "the difference") {
+	case name == "z" && p.touches('('):
+		legs, places, end := p.list(p.advance(), ')')
+		if end == 0 || !p.distinct(legs, places, "the difference") {
 			return zero(), true
 		}
 		if len(legs) != 2 {
-			p.fail(t, "leg", "z(3,4) is z3 - z4", "z(...) takes two legs, found %d", len(legs))
+			p.failAt(t, p.last, "leg", "z(3,4) is z3 - z4", "z(...) takes two legs, found %d", len(legs))
 			return zero(), true
 		}
 		return &Difference{p.from(t), legs[0], legs[1]}, true
-	case t.text == "PT" && p.touches("("):
-		open := p.next()
-		legs, tokens, end := p.list(open, ")")
-		if end == "" || !p.distinct(legs, tokens, "the Parke-Taylor factor") {
+	case name == "PT" && p.touches('('):
+		legs, places, end := p.list(p.advance(), ')')
+		if end == 0 || !p.distinct(legs, places, "the Parke-Taylor factor") {
 			return zero(), true
 		}
 		if len(legs) < 2 {
-			p.fail(t, "legs", "", "a Parke-Taylor factor needs at least two legs")
+			p.failAt(t, p.last, "legs", "", "a Parke-Taylor factor needs at least two legs")
 			return zero(), true
 		}
-		return &ParkeTaylor{p.from(t), legs}, true
-	case t.text == "detPhi":
+		return &ParkeTaylor{p.from(t), slices.Clone(legs)}, true
+	case name == "detPhi":
 		return &ReducedDeterminant{p.from(t)}, true
-	case t.text == "J":
+	case name == "J":
 		return &Jacobian{p.from(t)}, true
-	case t.text == "Pf" && call:
-		p.fail(t, "not-available", "", "Pf(...) is not available yet")
-		p.next()
-		p.skipGroup()
-		return zero(), true
 	}
-	if d, ok := indexed(t.text, "z"); ok {
-		leg, err := strconv.Atoi(d)
-		if err != nil || leg < 1 || leg > MaxLegs {
-			p.fail(t, "leg", fmt.Sprintf("legs are numbered from 1, at most %d", MaxLegs), "leg %s out of range", shorten(d))
+	if d, ok := indexed(name, "z"); ok {
+		leg := p.leg(t, d)
+		if leg == 0 {
 			return zero(), true
 		}
 		return &Puncture{p.from(t), leg}, true

@@ -5,6 +5,12 @@
 // Present: numbers, s(1,2,3) and s12, msq, + - * / ^, parentheses, cyclic{},
 // perms(){}, the amplitudes BS and phi3, and integrands in the punctures. What
 // is part of the language but not present yet is recognised and named.
+//
+// From the tightest on: ^, factors side by side, * and / from left to right, + and
+// -. So a b/c is (a b)/c; a/b c would be read in two ways and is refused; a sign
+// after a complete factor is binary. A function name is a call only if its bracket
+// follows directly: s34 (x) is a product, and s (1,2), where s alone means nothing,
+// is refused.
 package formula
 
 import (
@@ -14,7 +20,8 @@ import (
 )
 
 // Span is where a node stands: line and column of its first character, in the
-// file or text it was read from, and its length in bytes.
+// file or text it was read from, and its length in bytes. What comes from a
+// definition has its span there.
 type Span struct {
 	File         string
 	Line, Column int
@@ -27,8 +34,8 @@ type Node interface {
 	// String prints the node; parsing it gives the same tree.
 	String() string
 	write(b *strings.Builder)
-	legs(visit func(leg int))
-	relabel(to func(leg int) int) Node
+	legs(visit func(leg int)) // its own, not those of nodes below
+	relabel(r relabelling) Node
 }
 
 type span struct{ at Span }
@@ -131,21 +138,13 @@ func visitAll(legs []int, visit func(int)) {
 	}
 }
 
-func mapAll(legs []int, to func(int) int) []int {
-	out := make([]int, len(legs))
-	for i, l := range legs {
-		out[i] = to(l)
-	}
-	return out
-}
-
 func (n *Number) legs(func(int))             {}
 func (n *Invariant) legs(v func(int))        { visitAll(n.Legs, v) }
-func (n *Minus) legs(v func(int))            { n.X.legs(v) }
-func (n *Binary) legs(v func(int))           { n.L.legs(v); n.R.legs(v) }
-func (n *Power) legs(v func(int))            { n.Base.legs(v) }
-func (n *Cyclic) legs(v func(int))           { n.Body.legs(v) }
-func (n *Perms) legs(v func(int))            { visitAll(n.Legs, v); n.Body.legs(v) }
+func (n *Minus) legs(func(int))              {}
+func (n *Binary) legs(func(int))             {}
+func (n *Power) legs(func(int))              {}
+func (n *Cyclic) legs(func(int))             {}
+func (n *Perms) legs(v func(int))            { visitAll(n.Legs, v) }
 func (n *Puncture) legs(v func(int))         { v(n.Leg) }
 func (n *Difference) legs(v func(int))       { v(n.A); v(n.B) }
 func (n *ParkeTaylor) legs(v func(int))      { visitAll(n.Ordering, v) }
@@ -166,58 +165,6 @@ func (n *Amplitude) legs(v func(int)) {
 	}
 }
 
-func (n *Number) relabel(func(int) int) Node { return n }
-
-func (n *Invariant) relabel(to func(int) int) Node {
-	return &Invariant{n.span, mapAll(n.Legs, to)}
-}
-
-func (n *MassSquared) relabel(to func(int) int) Node {
-	if n.Leg == 0 {
-		return n
-	}
-	return &MassSquared{n.span, to(n.Leg)}
-}
-
-func (n *Amplitude) relabel(to func(int) int) Node {
-	z := &Amplitude{n.span, n.Theory, make([][]Leg, len(n.Orderings)), n.Braces}
-	for i, o := range n.Orderings {
-		z.Orderings[i] = slices.Clone(o)
-		for j := range z.Orderings[i] {
-			z.Orderings[i][j].Label = to(o[j].Label)
-		}
-	}
-	return z
-}
-
-func (n *Minus) relabel(to func(int) int) Node { return &Minus{n.span, n.X.relabel(to)} }
-
-func (n *Binary) relabel(to func(int) int) Node {
-	return &Binary{n.span, n.Op, n.L.relabel(to), n.R.relabel(to)}
-}
-
-func (n *Power) relabel(to func(int) int) Node {
-	return &Power{n.span, n.Base.relabel(to), n.Exponent}
-}
-
-// relabel names a divisor that vanishes; Evaluate expands cyclic sums before it
-// relabels their leaves.
-func (n *Cyclic) relabel(to func(int) int) Node { return &Cyclic{n.span, n.Body.relabel(to)} }
-
-func (n *Perms) relabel(to func(int) int) Node {
-	return &Perms{n.span, mapAll(n.Legs, to), n.Body.relabel(to)}
-}
-
-func (n *Puncture) relabel(to func(int) int) Node   { return &Puncture{n.span, to(n.Leg)} }
-func (n *Difference) relabel(to func(int) int) Node { return &Difference{n.span, to(n.A), to(n.B)} }
-
-func (n *ParkeTaylor) relabel(to func(int) int) Node {
-	return &ParkeTaylor{n.span, mapAll(n.Ordering, to)}
-}
-
-func (n *ReducedDeterminant) relabel(func(int) int) Node { return n }
-func (n *Jacobian) relabel(func(int) int) Node           { return n }
-
 // Formula is a parsed formula.
 type Formula struct {
 	Root Node
@@ -233,7 +180,9 @@ func (f *Formula) Legs() (n int, tells bool) {
 	if a := f.Amplitudes(); len(a) > 0 {
 		return len(a[0].Orderings[0]), true
 	}
-	f.Root.legs(func(l int) { n = max(n, l) })
+	walk(f.Root, func(node Node) {
+		node.legs(func(l int) { n = max(n, l) })
+	})
 	return n, false
 }
 
@@ -248,21 +197,42 @@ func (f *Formula) Amplitudes() []*Amplitude {
 	return out
 }
 
+// spine returns n, n.L, n.L.L, ... as far as they are binary. A sum of many terms
+// is a deep tree to the left; going down it in a loop keeps the stack small.
+func spine(n *Binary) []*Binary {
+	s := make([]*Binary, 0, 8)
+	for ok := true; ok; n, ok = n.L.(*Binary) {
+		s = append(s, n)
+	}
+	return s
+}
+
 // walk visits every node, parents first.
 func walk(n Node, visit func(Node)) {
-	visit(n)
 	switch n := n.(type) {
 	case *Minus:
+		visit(n)
 		walk(n.X, visit)
 	case *Binary:
-		walk(n.L, visit)
-		walk(n.R, visit)
+		s := spine(n)
+		for _, b := range s {
+			visit(b)
+		}
+		walk(s[len(s)-1].L, visit)
+		for _, b := range slices.Backward(s) {
+			walk(b.R, visit)
+		}
 	case *Power:
+		visit(n)
 		walk(n.Base, visit)
 	case *Cyclic:
+		visit(n)
 		walk(n.Body, visit)
 	case *Perms:
+		visit(n)
 		walk(n.Body, visit)
+	default:
+		visit(n)
 	}
 }
 

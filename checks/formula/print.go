@@ -1,6 +1,7 @@
 package formula
 
 import (
+	"slices"
 	"strconv"
 	"strings"
 )
@@ -42,13 +43,7 @@ func text(n Node) string {
 	return b.String()
 }
 
-// group prints a node, in parentheses if it binds less than asked for.
-func group(n Node, least int) string {
-	var b strings.Builder
-	writeGroup(&b, n, least)
-	return b.String()
-}
-
+// writeGroup prints a node, in parentheses if it binds less than asked for.
 func writeGroup(b *strings.Builder, n Node, least int) {
 	if level(n) < least {
 		b.WriteByte('(')
@@ -109,14 +104,30 @@ func (n *Minus) write(b *strings.Builder) {
 	writeGroup(b, n.X, levelProduct)
 }
 
-func (n *Binary) write(b *strings.Builder) {
-	left, right := levelSum, levelProduct
+// binds returns the levels that the sides of an operator need.
+func (n *Binary) binds() (left, right int) {
 	if n.Op == '*' || n.Op == '/' {
-		left, right = levelProduct, levelPower
+		return levelProduct, levelPower
 	}
-	writeGroup(b, n.L, left)
-	b.WriteByte(n.Op)
-	writeGroup(b, n.R, right)
+	return levelSum, levelProduct
+}
+
+func (n *Binary) write(b *strings.Builder) {
+	s := spine(n)
+	for _, x := range s {
+		if left, _ := x.binds(); level(x.L) < left {
+			b.WriteByte('(')
+		}
+	}
+	s[len(s)-1].L.write(b)
+	for _, x := range slices.Backward(s) {
+		left, right := x.binds()
+		if level(x.L) < left {
+			b.WriteByte(')')
+		}
+		b.WriteByte(x.Op)
+		writeGroup(b, x.R, right)
+	}
 }
 
 func (n *Power) write(b *strings.Builder) {
