@@ -22,6 +22,9 @@ func (r *Ring) Combine(a, x, b, y prime.Element) prime.Element {
 
 // Dot returns the sum of x_i y_i; y must be at least as long as x.
 func (r *Ring) Dot(x, y []prime.Element) prime.Element {
+	if slowcheck {
+		r.checkCanonical(x, y[:len(x)])
+	}
 	p := r.field.Modulus()
 	hi, lo := dotWide(0, 0, 2*p, x, y)
 	return r.field.ReduceWide(settle(hi, lo, p))
@@ -95,9 +98,15 @@ func (r *Ring) convolve(z, w, x, y []prime.Element, stride int) {
 	p := f.Modulus()
 	z, w = z[:d], w[:d]
 	x, y = x[:stride*d], y[:stride*d]
+	if slowcheck {
+		r.checkCanonical(w, x, y)
+	}
 	// downwards, so that z may overlap x
 	for t := d - 1; t >= 0; t-- {
 		hi, lo := dotWide(uint64(w[t]), 0, 2*p, x[:stride*(t+1)], y[stride*(d-1-t):])
+		if slowcheck {
+			r.checkRange(hi, 4)
+		}
 		z[t] = f.ReduceWide(settle(hi, lo, p))
 	}
 }
@@ -108,6 +117,9 @@ func (r *Ring) addTwoScaled(z []prime.Element, a prime.Element, x []prime.Elemen
 	f, d := r.field, r.depth
 	p := f.Modulus()
 	z, x, y = z[:d], x[:d], y[:d]
+	if slowcheck {
+		r.checkCanonical(z, x, y, []prime.Element{a, b})
+	}
 	for t := range z {
 		w := twoProducts(a, x[t], b, y[t])
 		w.Hi += uint64(z[t])
@@ -123,6 +135,9 @@ func (r *Ring) Square(z, x []prime.Element) {
 	f, d := r.field, r.depth
 	p := f.Modulus()
 	z, x = z[:d], x[:d]
+	if slowcheck {
+		r.checkCanonical(x)
+	}
 	back := r.reverse
 	r.reversed(back, x)
 	for t := range z {

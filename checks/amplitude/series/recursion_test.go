@@ -78,7 +78,7 @@ func sameLegs(p, q []int) bool {
 //	phi_{P|Q} = -(1/s_P) sum over XY = P, AB = Q of phi_{X|A} phi_{Y|B} - phi_{Y|A} phi_{X|B},
 //
 // m(Pn|Qn) = -s_P phi_{P|Q} (C. Mafra, JHEP 07 (2016) 080).
-func doubleCurrent(t testing.TB, f *prime.Field, s []prime.Element, alpha, beta []int) prime.Element {
+func doubleCurrent(t require.TestingT, f *prime.Field, s []prime.Element, alpha, beta []int) prime.Element {
 	n := len(alpha)
 	p, q := lastDropped(alpha), lastDropped(beta)
 	type key struct{ i, j, k int } // words p[i:i+k], q[j:j+k]
