@@ -114,6 +114,9 @@ func (f *Field) Neg(x Element) Element {
 
 // Mul returns x y.
 func (f *Field) Mul(x, y Element) Element {
+	if slowcheck {
+		f.checkCanonical([]Element{x, y})
+	}
 	hi, lo := bits.Mul64(uint64(x), uint64(y)) // < p^2, so hi < p
 	return f.reduce(hi, lo)
 }

@@ -98,6 +98,9 @@ func TransformLength(f *Field) int { return 1 << min(bits.TrailingZeros64(f.p-1)
 func (t *Transform) Forward(a []Element) {
 	f := t.f
 	a = a[:t.n]
+	if slowcheck {
+		f.checkCanonical(a)
+	}
 	for h := t.n / 2; h >= 1; h /= 2 {
 		w := t.w[h : 2*h]
 		for s := 0; s < t.n; s += 2 * h {
@@ -117,6 +120,9 @@ func (t *Transform) Forward(a []Element) {
 func (t *Transform) Inverse(a []Element) {
 	f := t.f
 	a = a[:t.n]
+	if slowcheck {
+		f.checkCanonical(a)
+	}
 	for h := 1; h < t.n; h *= 2 {
 		w := t.winv[h : 2*h]
 		for s := 0; s < t.n; s += 2 * h {

@@ -76,6 +76,9 @@ func (f *Field) AddScaledRow(z []Element, c Element, x []Element) {
 
 // SubScaledRow sets z = z - c x.
 func (f *Field) SubScaledRow(z []Element, c Element, x []Element) {
+	if slowcheck {
+		f.checkCanonical([]Element{c})
+	}
 	f.AddScaledRow(z, f.Neg(c), x)
 }
 
@@ -102,6 +105,9 @@ func (f *Field) Dot(x, y []Element) Element {
 // products. If an entry is zero it returns its index and false, and z is
 // unspecified. z must not overlap x.
 func (f *Field) InvertRow(z, x []Element) (int, bool) {
+	if slowcheck {
+		f.checkCanonical(x)
+	}
 	acc := f.one
 	for i, v := range x {
 		if v == 0 {

@@ -2,6 +2,7 @@ package prime
 
 import (
 	"math/big"
+	"sync"
 	"testing"
 
 	"github.com/stretchr/testify/require"
@@ -29,4 +30,32 @@ func TestTable(t *testing.T) {
 		next -= TableStep
 	}
 	require.Same(t, TableField(7), TableField(7))
+}
+
+// The start of the table, found by a program in another language.
+func TestTableIsPinned(t *testing.T) {
+	for i, p := range map[int]uint64{
+		0: 4611686015717867521, 1: 4611686015387566081, 2: 4611686011754250241, 39: 4611685903415377921,
+	} {
+		require.Equal(t, p, TableField(i).Modulus(), "entry %d", i)
+	}
+}
+
+func TestTableFromManyGoroutines(t *testing.T) {
+	const n = 60
+	var got [4][n]*Field
+	var wg sync.WaitGroup
+	for w := range got {
+		wg.Go(func() {
+			for i := range n {
+				got[w][i] = TableField(i)
+			}
+		})
+	}
+	wg.Wait()
+	for w := range got {
+		for i, f := range got[w] {
+			require.Same(t, TableField(i), f)
+		}
+	}
 }

@@ -29,6 +29,9 @@ func (f *Field) ReduceWide(w Wide) Element { return f.reduce(w.Hi, w.Lo) }
 
 // DotWide returns w + the sum of x_i y_i; y must be at least as long as x.
 func (f *Field) DotWide(w Wide, x, y []Element) Wide {
+	if slowcheck {
+		f.checkCanonical(x, y[:len(x)])
+	}
 	hi, lo := w.Hi, w.Lo
 	var c uint64
 	for len(x) > 0 {
@@ -50,6 +53,12 @@ func (f *Field) DotWide(w Wide, x, y []Element) Wide {
 // at, times the vector y. at must be at least as long as x; panics if an index
 // is out of range.
 func (f *Field) GatherDotWide(w Wide, x []Element, at []int32, y []Element) Wide {
+	if slowcheck {
+		f.checkCanonical(x)
+		for _, j := range at[:len(x)] {
+			f.checkCanonical(y[j : j+1])
+		}
+	}
 	hi, lo := w.Hi, w.Lo
 	twice := 2 * f.p
 	var c, h, l uint64
