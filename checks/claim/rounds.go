@@ -105,22 +105,27 @@ func (t *test) used() []amplitude.Route {
 	return t.engine.routes[:1]
 }
 
-// bound returns the largest bounds over the identities of the claim.
+// bound bounds, as a base-2 logarithm, the chance that one round accepts the
+// claim though one of its identities is false (formula.Delta states the theorem).
+// A draw is discarded where a divisor of any identity vanishes, so the divisors
+// of all of them count together.
 func (t *test) bound() (float64, error) {
-	worst := math.Inf(-1)
+	var all formula.Bound
 	for _, id := range t.identities {
-		delta, err := t.delta(id)
+		b, err := t.difference(id)
 		if err != nil {
 			return 0, err
 		}
-		worst = max(worst, delta)
+		all.NumeratorDegree = max(all.NumeratorDegree, b.NumeratorDegree)
+		all.NumeratorBits = max(all.NumeratorBits, b.NumeratorBits)
+		all.DenominatorDegree += b.DenominatorDegree
+		all.DenominatorBits += b.DenominatorBits
 	}
-	return worst, nil
+	return formula.Delta(all), nil
 }
 
-// delta bounds, as a base-2 logarithm, the chance that one round accepts a
-// false identity (rigorous: formula.Delta states the theorem).
-func (t *test) delta(id identity) (float64, error) {
+// difference bounds the difference of the two sides of an identity.
+func (t *test) difference(id identity) (formula.Bound, error) {
 	d := formula.NewBoundDomain(t.claim.Legs, t.massKind(), func(a *formula.Amplitude) (formula.Bound, error) {
 		r, err := toRequest(a)
 		if err != nil {
@@ -134,13 +139,13 @@ func (t *test) delta(id identity) (float64, error) {
 	})
 	left, err := formula.Evaluate(context.Background(), id.left, t.claim.Legs, d)
 	if err != nil {
-		return 0, err
+		return left, err
 	}
 	right, err := formula.Evaluate(context.Background(), id.right, t.claim.Legs, d)
 	if err != nil {
-		return 0, err
+		return right, err
 	}
-	return formula.Delta(d.Sub(left, right)), nil
+	return d.Sub(left, right), nil
 }
 
 func (t *test) massKind() formula.Masses {
